@@ -116,12 +116,20 @@ class Load:
         _check_position("load", self.position)
         if self.impedance is not None:
             if not cmath.isfinite(self.impedance) or complex(self.impedance).real < 0:
-                raise GeometryError(f"a load of {self.impedance} ohm: it must be finite, its resistance not negative")
+                raise GeometryError(
+                    f"a load of {self.impedance} ohm: it must be finite, its resistance not negative"
+                )
             if (self.resistance, self.inductance, self.capacitance) != (0.0, 0.0, None):
-                raise GeometryError("a load has either an impedance or resistance, inductance and capacitance")
+                raise GeometryError(
+                    "a load has either an impedance or resistance, inductance and capacitance"
+                )
         if self.connection not in ("series", "parallel"):
             raise GeometryError(f"a load joined in {self.connection!r}: allowed are 'series' and 'parallel'")
-        if not (self.resistance >= 0 and self.inductance >= 0 and (self.capacitance is None or self.capacitance > 0)):
+        if not (
+            self.resistance >= 0
+            and self.inductance >= 0
+            and (self.capacitance is None or self.capacitance > 0)
+        ):
             raise GeometryError(
                 f"a load of {self.resistance} ohm, {self.inductance} H, {self.capacitance} F: resistance and "
                 "inductance must not be negative, capacitance must be positive"

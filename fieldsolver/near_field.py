@@ -1,0 +1,215 @@
+"""Electric and magnetic field anywhere in air, up to three radii from the conductors.
+
+A segment farther from a group of points than five of its lengths is two Gauss points, a nearer one
+four; within two lengths of a point it is integrated on its own, with points condensed by a sinh
+towards the foot of the perpendicular (docs/accuracy.md has the errors).
+"""
+
+from dataclasses import dataclass
+
+import numpy as np
+
+from fieldsolver.clearances import axis_distances
+from fieldsolver.constants import FREE_SPACE_IMPEDANCE
+from fieldsolver.errors import PointError
+from fieldsolver.ground import FreeSpace
+from fieldsolver.images import MIRROR
+from fieldsolver.kernels import gauss
+from fieldsolver.radiation import Elements, fields_of_elements
+
+RADII = 3.0
+GROUP = 64
+FAR, NEAR = 5.0, 2.0
+
+
+@dataclass(frozen=True)
+class Field:
+    """Total field at points: electric (n, 3) [V/m rms], magnetic (n, 3) [A/m rms], complex."""
+
+    electric: np.ndarray
+    magnetic: np.ndarray
+
+    @property
+    def electric_strength(self) -> np.ndarray:
+        """(n,) square root of the summed squares of the components. [V/m rms]"""
+        return np.sqrt((np.abs(self.electric) ** 2).sum(axis=1))
+
+    @property
+    def magnetic_strength(self) -> np.ndarray:
+        """(n,) square root of the summed squares of the components. [A/m rms]"""
+        return np.sqrt((np.abs(self.magnetic) ** 2).sum(axis=1))
+
+
+def near_field(currents, points) -> Field:
+    """Total field of currents, ground included, at points (n, 3) [m].
+
+    Raises
+    ------
+    PointError
+        Where points lie below ground or within three radii of a conductor; nothing is returned then.
+    """
+    points = np.asarray(points, dtype=float).reshape(-1, 3)
+    problem = currents.problem
+    _check(points, problem)
+    wires = _source(problem.mesh, currents.ends)
+    electric, magnetic = _fields(problem.k, points, wires)
+    if problem.image is not None:
+        for field, part in zip(
+            (electric, magnetic), _fields(problem.k, points, wires.mirrored(problem.image)), strict=True
+        ):
+            field += part
+    if problem.half_space is not None:
+        for field, part in zip(
+            (electric, magnetic), problem.half_space.fields(problem, currents.ends, points), strict=True
+        ):
+            field += part
+    return Field(electric, magnetic)
+
+
+def _check(points, problem):
+    below = points[:, 2] < 0 if not isinstance(problem.ground, FreeSpace) else np.zeros(len(points), bool)
+    mesh = problem.mesh
+    close = np.zeros(len(points), bool)
+    axes = np.stack([mesh.start, mesh.end], axis=1)
+    for i in range(0, len(points), 1024):
+        distance = axis_distances(points[i : i + 1024], axes)[0]
+        close[i : i + 1024] = (distance < RADII * mesh.radius[None]).any(axis=1)
+    if below.any() or close.any():
+        raise PointError(
+            f"{int(below.sum())} points are below ground, {int(close.sum())} within three radii of a conductor: no "
+            "field is given there",
+            below | close,
+        )
+
+
+@dataclass(frozen=True)
+class _Source:
+    """Segments carrying currents: start, vector (S, 3); currents (S, 2); tensors that E and H see."""
+
+    start: np.ndarray
+    vector: np.ndarray
+    currents: np.ndarray
+    tangent: np.ndarray
+    electric: np.ndarray
+    magnetic: np.ndarray
+    charge: complex
+
+    @property
+    def length(self) -> np.ndarray:
+        return np.linalg.norm(self.vector, axis=1)
+
+    def mirrored(self, image) -> "_Source":
+        return _Source(
+            self.start * MIRROR,
+            self.vector * MIRROR,
+            self.currents,
+            self.tangent,
+            image.tensor,
+            image.magnetic_tensor,
+            image.charge,
+        )
+
+    def elements(self, fraction, weight, segment) -> Elements:
+        """Elements at fractions (..., q) of segments (...), flattened."""
+        current = (
+            self.currents[segment, 0, None] * (1 - fraction) + self.currents[segment, 1, None] * fraction
+        )
+        moment = (current * weight * self.length[segment, None])[..., None] * self.tangent[segment, None, :]
+        slope = (self.currents[segment, 1] - self.currents[segment, 0])[:, None] * weight * self.charge
+        points = self.start[segment, None] + fraction[..., None] * self.vector[segment, None]
+        return Elements(
+            points.reshape(-1, 3),
+            (moment * self.electric).reshape(-1, 3),
+            (moment * self.magnetic).reshape(-1, 3),
+            slope.reshape(-1),
+        )
+
+
+def _source(mesh, ends) -> _Source:
+    one = np.ones(3)
+    return _Source(mesh.start, mesh.end - mesh.start, ends.reshape(-1, 2), mesh.tangent, one, one, 1.0)
+
+
+def _fields(k, points, source: _Source):
+    electric = np.zeros((len(points), 3), complex)
+    magnetic = np.zeros((len(points), 3), complex)
+    everything = np.arange(len(source.start))
+    coarse, fine = (source.elements(*_rule(q, len(everything)), everything) for q in (2, 4))
+    for group in _groups(points):
+        at = points[group]
+        centre = (at.min(axis=0) + at.max(axis=0)) / 2
+        reach = np.linalg.norm(at - centre, axis=1).max()
+        distance = axis_distances(
+            centre[None], np.stack([source.start, source.start + source.vector], axis=1)
+        )[0][0]
+        near = distance - reach < FAR * source.length
+        far = np.flatnonzero(~near)
+        e, h = fields_of_elements(k, at, coarse[_expand(far, 2)])
+        if near.any():
+            for field, part in zip((e, h), _near(k, at, source, fine, np.flatnonzero(near)), strict=True):
+                field += part
+        electric[group], magnetic[group] = e, h
+    return electric, magnetic
+
+
+def _rule(count, segments):
+    nodes, weights = gauss(count)
+    return np.tile(nodes, (segments, 1)), np.tile(weights, (segments, 1))
+
+
+def _expand(segments, count):
+    return (segments[:, None] * count + np.arange(count)).reshape(-1)
+
+
+def _groups(points):
+    """Index arrays of neighbouring points, from halving along the longest side."""
+    stack, groups = [np.arange(len(points))], []
+    while stack:
+        index = stack.pop()
+        if len(index) <= GROUP:
+            groups.append(index)
+            continue
+        axis = int(np.argmax(np.ptp(points[index], axis=0)))
+        order = index[np.argsort(points[index, axis], kind="stable")]
+        stack += [order[: len(order) // 2], order[len(order) // 2 :]]
+    return [group for group in groups if len(group)]
+
+
+def _near(k, at, source, fine, segments):
+    """Fields of the segments near a group of points."""
+    axes = np.stack([source.start[segments], source.start[segments] + source.vector[segments]], axis=1)
+    distance, _ = axis_distances(at, axes)
+    close = distance < NEAR * source.length[segments]
+    electric, magnetic = fields_of_elements(k, at, fine[_expand(segments, 4)], np.repeat(close, 4, axis=1))
+    point, local = np.nonzero(close)
+    if len(point):
+        e, h = _singly(k, at[point], source, segments[local], distance[point, local])
+        np.add.at(electric, point, e)
+        np.add.at(magnetic, point, h)
+    return electric, magnetic
+
+
+def _singly(k, at, source, segment, distance):
+    """Field of one segment at each point, (n, 3) each, by 20 points with s = foot + rho sinh t."""
+    vector, length = source.vector[segment], source.length[segment]
+    offset = at - source.start[segment]
+    foot = np.einsum("nc,nc->n", offset, vector) / length
+    rho = np.maximum(np.sqrt(np.maximum((offset**2).sum(axis=1) - foot**2, 0)), 0.5 * distance)
+    low, high = np.arcsinh(-foot / rho), np.arcsinh((length - foot) / rho)
+    nodes, weights = gauss(20)
+    t = low[:, None] + (high - low)[:, None] * nodes
+    fraction = (foot[:, None] + rho[:, None] * np.sinh(t)) / length[:, None]
+    weight = (rho * (high - low) / length)[:, None] * np.cosh(t) * weights
+    elements = source.elements(fraction, weight, segment)
+    return _pairwise(k, np.repeat(at, 20, axis=0), elements, len(at))
+
+
+def _pairwise(k, at, elements, count):
+    from_element = at - elements.points
+    r = np.linalg.norm(from_element, axis=1)
+    g = np.exp(-1j * k * r) / r
+    gradient = ((1 + 1j * k * r) * g / r**2)[:, None] * from_element
+    from_currents = elements.electric * g[:, None] - elements.slopes[:, None] * gradient / k**2
+    electric = (-1j * k * FREE_SPACE_IMPEDANCE / (4 * np.pi)) * from_currents
+    magnetic = np.cross(gradient, elements.magnetic) / (-4 * np.pi)
+    return tuple(field.reshape(count, -1, 3).sum(axis=1) for field in (electric, magnetic))
