@@ -19,12 +19,14 @@ class FeedLine:
     """The outside of a coaxial line as metal, from the feed downwards.
 
     points : ((east, north, up), ...) relative to the antenna's position and height, turned with it [m]
-    outer_radius [m]; choke : impedance of a choke at the feed [ohm], None without one.
+    outer_radius [m]; choke : impedance of a choke at the feed [ohm], None without one;
+    ground_connection : where its far end stands on real ground [ohm], None where none is stated.
     """
 
     points: tuple[tuple[float, float, float], ...]
     outer_radius: float
     choke: complex | None = None
+    ground_connection: complex | None = None
 
 
 @dataclass(frozen=True)
@@ -68,6 +70,7 @@ class Wiring:
     conductors : tuple of fieldsolver conductors; feeds and loads index into them.
     state : which of an antenna's possible states this is ("as built", "feed line choked", ...).
     notes : what was assumed, for the report.
+    feed_line : indices of the conductors that are the outside of a feed line.
     """
 
     conductors: tuple
@@ -75,3 +78,4 @@ class Wiring:
     loads: tuple[fieldsolver.Load, ...] = ()
     state: str = "as built"
     notes: tuple[str, ...] = ()
+    feed_line: tuple[int, ...] = ()

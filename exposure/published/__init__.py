@@ -1,0 +1,1 @@
+"""Tables from print that are not exposure limits: soils, metals, cables, modes; printed units and digits."""

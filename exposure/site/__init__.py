@@ -1,0 +1,1 @@
+"""A station and the places around it: plain facts, and the file that states them."""
