@@ -14,6 +14,8 @@ Near pairs subtract 1/R - k^2 R/2, integrated in closed form along the inner seg
 both), and integrate the smooth rest numerically.
 """
 
+from functools import lru_cache
+
 import numpy as np
 
 _STEPS = 4096
@@ -56,6 +58,7 @@ def cosine_and_minus_sine(phase: np.ndarray) -> tuple[np.ndarray, np.ndarray]:
     return real, np.negative(sine, out=sine)
 
 
+@lru_cache
 def gauss(count: int) -> tuple[np.ndarray, np.ndarray]:
     """Gauss-Legendre nodes and weights on 0..1."""
     x, w = np.polynomial.legendre.leggauss(count)
@@ -68,32 +71,52 @@ def hats(fraction: np.ndarray) -> np.ndarray:
 
 
 def far_moments(k: float, test, source, length_test, length_source, extra_square) -> np.ndarray:
-    """Moments by Gauss points at both segments.
+    """Moments with 1 and N_1 - N_0 in place of the hats, by two Gauss points at both segments.
 
-    test (P, q, 3), source (Q, q, 3): points of ``gauss(q)`` [m]; lengths (P,), (Q,) [m];
+    test (P, 2, 3), source (Q, 2, 3): points of ``gauss(2)`` [m]; lengths (P,), (Q,) [m];
     extra_square (P, Q) is added to R^2 [m2].  Returns (2, 2, P, Q) [m].
+
+    N_1 - N_0 is -+1/sqrt(3) at the points, so sums and differences of the four values do.
     """
-    q = test.shape[1]
-    nodes, weights = gauss(q)
-    shape = hats(nodes) * weights
-    out = np.zeros((2, 2, len(test), len(source)), dtype=complex)
-    sources = [_with_square(source[:, j]) for j in range(q)]
-    for i in range(q):
-        row = np.zeros((2, len(test), len(source)), dtype=complex)
-        point = _with_square(test[:, i], -2.0)
-        for j in range(q):
-            square = point @ sources[j].T
-            square += extra_square
-            np.maximum(square, 1e-30, out=square)
-            distance = np.sqrt(square)
-            value = phasor(k * distance)
-            value /= distance
-            row[0] += shape[0, j] * value
-            row[1] += shape[1, j] * value
-        out[0] += shape[0, i] * row
-        out[1] += shape[1, i] * row
-    out *= length_test[:, None] * length_source[None]
+    out = np.empty((2, 2, len(test), len(source)), dtype=complex)
+    for i in (0, 1):
+        for j in (0, 1):
+            _kernel(k, test[:, i], source[:, j], extra_square, out[i, j])
+    for i in (0, 1):
+        _sum_and_difference(out[i, 0], out[i, 1])
+    for j in (0, 1):
+        _sum_and_difference(out[0, j], out[1, j])
+    scale = 0.25 * length_test[:, None] * length_source[None]
+    out[0, 0] *= scale
+    scale /= np.sqrt(3)
+    out[0, 1] *= scale
+    out[1, 0] *= scale
+    scale /= np.sqrt(3)
+    out[1, 1] *= scale
     return out
+
+
+def mean_and_slope(moments: np.ndarray) -> np.ndarray:
+    """Moments with the hats (2, 2, ...) turned into those with 1 and N_1 - N_0."""
+    test = np.stack([moments[0] + moments[1], moments[1] - moments[0]])
+    return np.stack([test[:, 0] + test[:, 1], test[:, 1] - test[:, 0]], axis=1)
+
+
+def _kernel(k, test, source, extra_square, out):
+    square = _with_square(test, -2.0) @ _with_square(source).T
+    square += extra_square
+    np.maximum(square, 1e-30, out=square)
+    np.sqrt(square, out=square)
+    real, imaginary = cosine_and_minus_sine(k * square)
+    np.divide(real, square, out=out.real)
+    np.divide(imaginary, square, out=out.imag)
+
+
+def _sum_and_difference(first, second):
+    """first + second and second - first, in place."""
+    difference = second - first
+    first += second
+    second[...] = difference
 
 
 def _with_square(points: np.ndarray, factor: float | None = None) -> np.ndarray:

@@ -6,6 +6,7 @@ one radius of another wire's axis puts a node into that wire.  Feeds and loads p
 
 import math
 from dataclasses import dataclass
+from functools import cached_property
 
 import numpy as np
 
@@ -43,12 +44,12 @@ class Mesh:
     def count(self) -> int:
         return len(self.radius)
 
-    @property
+    @cached_property
     def length(self) -> np.ndarray:
         """(S,) lengths. [m]"""
         return np.linalg.norm(self.end - self.start, axis=1)
 
-    @property
+    @cached_property
     def tangent(self) -> np.ndarray:
         """(S, 3) unit vectors. [1]"""
         return (self.end - self.start) / self.length[:, None]
