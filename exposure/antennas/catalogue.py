@@ -7,10 +7,8 @@ from exposure.antennas import conductors, dipole, vertical
 from exposure.antennas.materials import MATERIAL_KEYS, material
 from exposure.antennas.model import Antenna, FeedLine, Structure, Wiring
 from exposure.antennas.structures import structure_wiring
-from fieldsolver import GeometryError
-from exposure.keys import (
+from exposure.keys.kinds import (
     Key,
-    Reading,
     SubTable,
     angle,
     choice,
@@ -21,6 +19,8 @@ from exposure.keys import (
     text,
     wire_size,
 )
+from exposure.keys.reading import Reading
+from fieldsolver import GeometryError
 
 __all__ = [
     "KINDS",

@@ -81,8 +81,8 @@ def ground_loads(
     if ends and real and connection is None:
         raise fs.GeometryError(
             f"{name} stands on real ground (up = 0): how it is joined to the ground must be stated as "
-            "ground_connection_ohm (a rod, a screen of radials, a measurement; 0 is taken as ideal). The bare "
-            "end of a wire is no connection: let it end at least one radius above the ground if there is none"
+            "ground_connection_ohm (a rod, a screen of radials, a measurement; 0 is taken as ideal). The "
+            "bare end of a wire is no connection: let it end at least one radius above the ground if there is none"
         )
     if connection is not None and not (ends and real):
         why = "none of its ends stands on the ground (up = 0)" if real else "the ground is not real ground"
@@ -104,8 +104,8 @@ def _check_clearance(wire: fs.Wire, name: str):
             )
         if TOUCHES * wire.radius <= up < wire.radius:
             raise fs.GeometryError(
-                f"{name} has an end {up:.3g} m above the ground, less than its radius of {wire.radius:.3g} m: let it "
-                "stand on the ground (up = 0) or end at least one radius above it"
+                f"{name} has an end {up:.3g} m above the ground, less than its radius of {wire.radius:.3g} m: "
+                "let it stand on the ground (up = 0) or end at least one radius above it"
             )
     if stands_on_ground(wire.start, wire.radius) and stands_on_ground(wire.end, wire.radius):
         raise fs.GeometryError(

@@ -8,21 +8,9 @@ from exposure.antennas.chains import ground_loads, place_on, placed, stands_on_g
 from exposure.antennas.feed_line import with_feed_line
 from exposure.antennas.materials import MATERIAL_KEYS, material
 from exposure.antennas.model import Antenna, Material, Wiring
-from exposure.keys import (
-    FRACTION,
-    NOT_NEGATIVE,
-    POSITIVE,
-    Range,
-    Reading,
-    SubTable,
-    angle,
-    choice,
-    impedance,
-    integer,
-    number,
-    points,
-    wire_size,
-)
+from exposure.keys.kinds import SubTable, angle, choice, impedance, integer, number, points, wire_size
+from exposure.keys.reading import Reading
+from exposure.keys.values import FRACTION, NOT_NEGATIVE, POSITIVE, Range
 
 _WHICH = "number of the conductor, 1 for the first"
 _WHERE = "fraction of the whole chain's length from its first point; may fall on a corner"
@@ -91,7 +79,7 @@ class ChainFeed:
 
 @dataclass(frozen=True)
 class ChainLoad:
-    """conductor from 0; position on the whole chain [1]; resistance [ohm], inductance [H], capacitance [F]."""
+    """conductor from 0; position on the chain [1]; resistance [ohm], inductance [H], capacitance [F]."""
 
     conductor: int
     position: float
@@ -186,8 +174,8 @@ def _notes(antenna: Antenna) -> tuple[str, ...]:
     if antenna.feed_line is not None:
         return ()
     return (
-        "the outside of the feed line is not modelled: where the antenna is not balanced about its feed, or no choke is "
-        "fitted, fields near the feed line are not assessed",
+        "the outside of the feed line is not modelled: where the antenna is not balanced about its feed, or no "
+        "choke is fitted, fields near the feed line are not assessed",
     )
 
 

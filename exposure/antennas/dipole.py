@@ -8,7 +8,9 @@ from exposure.antennas.chains import ground_loads, place_on, placed, wires
 from exposure.antennas.feed_line import with_feed_line
 from exposure.antennas.model import Antenna, Wiring
 from exposure.antennas.resonance import half_wave
-from exposure.keys import POSITIVE, Range, Reading, angle, length, number, wire_size
+from exposure.keys.kinds import angle, length, number, wire_size
+from exposure.keys.reading import Reading
+from exposure.keys.values import POSITIVE, Range
 
 KEYS = (
     length("length", POSITIVE, help="of the whole wire; derived from the frequency where only one is used"),
@@ -30,9 +32,11 @@ KEYS = (
 
 @dataclass(frozen=True)
 class Dipole:
-    """length of the whole wire [m], None until a frequency settles it; droop of the arms below the horizontal [rad],
-    or end_height of both ends above ground [m]; feed_position, a fraction of the wire from its start, the end
-    away from the bearing; length_note says how a length was derived.
+    """A wire with two equal arms.
+
+    length of the whole wire [m], None until a frequency settles it; droop of the arms below the
+    horizontal [rad], or end_height of both ends above ground [m]; feed_position, a fraction of the wire
+    from its start, the end away from the bearing; length_note says how a length was derived.
     """
 
     length: float | None
@@ -106,8 +110,8 @@ def _notes(antenna: Antenna) -> tuple[str, ...]:
     if shape.feed_position != 0.5:
         return (
             *notes,
-            "fed off its middle, the antenna drives current on the outside of its feed line, which the site file does "
-            "not describe: fields near the feed line are not assessed",
+            "fed off its middle, the antenna drives current on the outside of its feed line, which the site "
+            "file does not describe: fields near the feed line are not assessed",
         )
     return (
         *notes,

@@ -32,8 +32,8 @@ def with_feed_line(
     at = tuple(wiring.conductors[feed.wire].point(feed.position))
     if math.dist(at, points[0]) > AT_THE_FEED:
         raise fs.GeometryError(
-            "the feed line begins at ({:.3f}, {:.3f}, {:.3f}) m on the site, but the feed is at ({:.3f}, {:.3f}, {:.3f}) m: "
-            "its first point must be the feed".format(*points[0], *at)
+            "the feed line begins at ({:.3f}, {:.3f}, {:.3f}) m on the site, but the feed is at "
+            "({:.3f}, {:.3f}, {:.3f}) m: its first point must be the feed".format(*points[0], *at)
         )
     if abs(at[2]) < AT_THE_FEED and ground != fs.FREE_SPACE:
         raise fs.GeometryError(

@@ -3,7 +3,9 @@
 import math
 
 from exposure.antennas.model import Material
-from exposure.keys import POSITIVE, Range, Reading, choice, number
+from exposure.keys.kinds import choice, number
+from exposure.keys.reading import Reading
+from exposure.keys.values import POSITIVE, Range
 from exposure.published.metals import METALS
 
 PERFECT = Material("perfect", math.inf)

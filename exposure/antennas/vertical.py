@@ -8,7 +8,9 @@ from exposure.antennas.chains import ground_loads, placed, stands_on_ground, wir
 from exposure.antennas.feed_line import with_feed_line
 from exposure.antennas.model import Antenna, Wiring
 from exposure.antennas.resonance import quarter_wave
-from exposure.keys import POSITIVE, Range, Reading, angle, integer, length, wire_size
+from exposure.keys.kinds import angle, integer, length, wire_size
+from exposure.keys.reading import Reading
+from exposure.keys.values import POSITIVE, Range
 
 KEYS = (
     length("length", POSITIVE, help="of the vertical part; a quarter wave where only one frequency is used"),
@@ -22,8 +24,10 @@ KEYS = (
 
 @dataclass(frozen=True)
 class Vertical:
-    """length and radial_length [m], None until a frequency settles them; radial_droop below the horizontal [rad];
-    wire_radius, radial_wire_radius [m]; length_note says how lengths were derived.
+    """A radiator and its radials.
+
+    length and radial_length [m], None until a frequency settles them; radial_droop below the horizontal
+    [rad]; wire_radius, radial_wire_radius [m]; length_note says how lengths were derived.
     """
 
     length: float | None
@@ -99,8 +103,8 @@ def _tips(shape: Vertical):
 def _check_counterpoise(shape: Vertical, on_ground: bool, name: str):
     if on_ground and shape.radials:
         raise fs.GeometryError(
-            f"{name} has radials on the ground, which are not modelled as wires: leave out radials and state the "
-            "impedance of the radial screen as ground_connection_ohm"
+            f"{name} has radials on the ground, which are not modelled as wires: leave out radials and state "
+            "the impedance of the radial screen as ground_connection_ohm"
         )
     if not on_ground and not shape.radials:
         raise fs.GeometryError(
@@ -113,8 +117,8 @@ def _notes(antenna: Antenna) -> tuple[str, ...]:
     notes = (shape.length_note,) if shape.length_note else ()
     if antenna.feed_line is None:
         notes += (
-            "a vertical drives current on the outside of its feed line, which the site file does not describe: "
-            "fields near the feed line are not assessed",
+            "a vertical drives current on the outside of its feed line, which the site file does not "
+            "describe: fields near the feed line are not assessed",
         )
     if antenna.ground_connection == 0:
         notes += ("its connection to the ground is stated as 0 ohm: ideal",)

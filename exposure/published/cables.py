@@ -1,4 +1,4 @@
-"""Attenuation of matched cables: the lowest published value, so that no loss is credited that may not be there.
+"""Attenuation of matched cables: the lowest published value, so that no doubtful loss is credited.
 
 Three sources disagree by some 15 %; a table made for other purposes prints upper values.  The credited
 figure is the lowest of those that cover the frequency, and none where no source covers it:
@@ -38,16 +38,26 @@ BANDS = {
     "13 cm": (2300.0, 2450.0),
 }
 
-# dB per 100 ft, columns in the order of BANDS; None where nothing is printed
+# dB per 100 ft, as printed; "" where nothing is printed
+COLUMNS = ("RG-58", "RG-8X", "RG-213", "RG-8 foam", "9913-type", "half-inch hardline", "450-ohm ladder line")
 REGULATOR = {
-    "RG-58": ("0.5", "0.7", "1.1", "1.4", "1.7", "2.0", "2.2", "2.4", "2.5", "3.5", "6.5", "8.4", "12", "19", "23", None),
-    "RG-8X": ("0.4", "0.5", "0.7", "0.9", "1.1", "1.2", "1.3", "1.4", "1.5", "2.1", "3.6", "4.6", "6.5", "9.6", "12", "15"),
-    "RG-213": ("0.3", "0.4", "0.5", "0.6", "0.8", "0.9", "1.0", "1.1", "1.3", "1.7", "3.0", "4.0", "5.8", "9.0", "11", "15"),
-    "RG-8 foam": ("0.2", "0.3", "0.4", "0.5", "0.6", "0.7", "0.7", "0.8", "0.9", "1.2", "2.0", "2.6", "3.6", "5.4", "6.4", "8.8"),
-    "9913-type": ("0.2", "0.2", "0.3", "0.4", "0.5", "0.6", "0.6", "0.6", "0.7", "0.9", "1.6", "2.0", "2.8", "4.0", "4.6", "6.4"),
-    "half-inch hardline": ("0", "0.1", "0.2", "0.2", "0.3", "0.3", "0.3", "0.4", "0.4", "0.5", "1.0", "1.3", "1.9", "3.0", "3.7", "5.2"),
-    "450-ohm ladder line": ("0", "0", "0", "0", "0", "0.1", "0.1", "0.2", "0.2", "0.3", "0.7", None, None, None, None, None),
-}  # fmt: skip
+    "160 m": ("0.5", "0.4", "0.3", "0.2", "0.2", "0", "0"),
+    "80/75 m": ("0.7", "0.5", "0.4", "0.3", "0.2", "0.1", "0"),
+    "40 m": ("1.1", "0.7", "0.5", "0.4", "0.3", "0.2", "0"),
+    "30 m": ("1.4", "0.9", "0.6", "0.5", "0.4", "0.2", "0"),
+    "20 m": ("1.7", "1.1", "0.8", "0.6", "0.5", "0.3", "0"),
+    "17 m": ("2.0", "1.2", "0.9", "0.7", "0.6", "0.3", "0.1"),
+    "15 m": ("2.2", "1.3", "1.0", "0.7", "0.6", "0.3", "0.1"),
+    "12 m": ("2.4", "1.4", "1.1", "0.8", "0.6", "0.3", "0.2"),
+    "10 m": ("2.5", "1.5", "1.3", "0.9", "0.7", "0.4", "0.2"),
+    "6 m": ("3.5", "2.1", "1.7", "1.2", "0.9", "0.5", "0.3"),
+    "2 m": ("6.5", "3.6", "3.0", "2.0", "1.6", "1.0", "0.7"),
+    "1.25 m": ("8.4", "4.6", "4.0", "2.6", "2.0", "1.3", ""),
+    "70 cm": ("12", "6.5", "5.8", "3.6", "2.8", "1.9", ""),
+    "33 cm": ("19", "9.6", "9.0", "5.4", "4.0", "3.0", ""),
+    "23 cm": ("23", "12", "11", "6.4", "4.6", "3.7", ""),
+    "13 cm": ("", "15", "15", "8.8", "6.4", "5.2", ""),
+}
 
 LAW = {
     #                      k1     k2
@@ -80,7 +90,7 @@ CABLES = {
 
 @dataclass(frozen=True)
 class Attenuation:
-    """Matched loss for a length of cable; what it rests on. per_metre [dB/m], zero where nothing is published."""
+    """Matched loss of a cable, per_metre [dB/m], zero where nothing is published; what it rests on."""
 
     per_metre: float
     source: str
@@ -104,11 +114,15 @@ def attenuation(cable: str, frequency: float) -> Attenuation:
 def _of_regulator(column: str, megahertz: float):
     lower_edges = [low for low, _ in BANDS.values()]
     index = bisect_right(lower_edges, megahertz) - 1
-    inside_table = index >= 0 and megahertz <= list(BANDS.values())[-1][1]
-    printed = REGULATOR[column][index] if inside_table else None
-    if printed is not None:
+    if index < 0 or megahertz > max(high for _, high in BANDS.values()):
+        return
+    band = list(BANDS)[index]
+    printed = REGULATOR[band][COLUMNS.index(column)]
+    if printed:
         half_unit = 0.05 if "." in printed else 0.5 if float(printed) else 0.0
-        text = f"FCC OET Bulletin 65 Supplement B, 1997, appendix B, {list(BANDS)[index]}: {printed} dB/100 ft, less rounding"
+        text = (
+            f"FCC OET Bulletin 65 Supplement B, 1997, appendix B, {band}: {printed} dB/100 ft, less rounding"
+        )
         yield Attenuation((float(printed) - half_unit) / HUNDRED_FEET, text)
 
 

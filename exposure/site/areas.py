@@ -1,6 +1,6 @@
 """An area of a site file to an Area."""
 
-from exposure.keys import Reading
+from exposure.keys.reading import Reading
 from exposure.site.model import Area
 from exposure.site.outlines import objection, opened
 
@@ -41,8 +41,8 @@ def _check_population(reading: Reading):
     if reading["population"] == "occupational" and not reading.has("informed"):
         reading.wrong(
             "population",
-            'occupational needs informed = "who, when": these levels hold only for people who know of the exposure '
-            "and can reduce it",
+            'occupational needs informed = "who, when": these levels hold only for people who know of the '
+            "exposure and can reduce it",
         )
 
 
@@ -72,8 +72,8 @@ def _heights(reading: Reading, stem: str):
         if height is not None and height < 0:
             reading.wrong(
                 end,
-                f"'{reading['name']}' lies below the ground (up = 0): places below it, such as downhill, are not "
-                f"modelled and not guessed; found {height:g} m",
+                f"area '{reading['name'] or '?'}' lies below the ground (up = 0): places below it, such as "
+                f"downhill, are not modelled and not guessed; found {height:g} m",
             )
     bottom = 0.0 if bottom is None else bottom
     top = bottom + STANDING if top is None else top

@@ -1,6 +1,6 @@
 """A transmission of a site file to a Transmission: which power, which duty factor, which line."""
 
-from exposure.keys import Reading
+from exposure.keys.reading import Reading
 from exposure.published.modes import MODES, duty_factor_of_amplitude_modulation
 from exposure.site.model import Line, Transmission
 
@@ -76,10 +76,8 @@ def _power(reading: Reading) -> tuple[float, str]:
         return power, f"{power:g} W peak envelope power at the transmitter, as stated"
     carrier, depth = reading["carrier_power"], reading["modulation_depth"]
     power = carrier * (1 + depth) ** 2
-    return (
-        power,
-        f"{carrier:g} W carrier with modulation depth {depth:g}: {power:g} W peak envelope power, carrier x (1 + m)^2",
-    )
+    stated = f"{carrier:g} W carrier with modulation depth {depth:g}"
+    return power, f"{stated}: {power:g} W peak envelope power, carrier x (1 + m)^2"
 
 
 def _duty(reading: Reading) -> tuple[float, str]:

@@ -16,7 +16,8 @@ def objection(corners: tuple) -> str | None:
         return f"an outline needs at least 3 different corners; found {len(set(corners))}"
     outline = Polygon(corners)
     if not outline.is_valid:
-        return f"the outline crosses or touches itself ({_place(explain_validity(outline))}): state its corners in order, one way round"
+        where = _place(explain_validity(outline))
+        return f"the outline crosses or touches itself ({where}): state its corners in order, one way round"
     if outline.area == 0:
         return "the outline has no area: its corners lie on one line"
     return None

@@ -2,11 +2,7 @@
 
 from exposure.antennas.catalogue import COMMON_KEYS, variant
 from exposure.antennas.materials import MATERIAL_KEYS
-from exposure.keys import (
-    FRACTION,
-    NOT_NEGATIVE,
-    POSITIVE,
-    Range,
+from exposure.keys.kinds import (
     SubTable,
     boolean,
     choice,
@@ -22,6 +18,7 @@ from exposure.keys import (
     text,
     wire_size,
 )
+from exposure.keys.values import FRACTION, NOT_NEGATIVE, POSITIVE, Range
 from exposure.limits import DOCUMENTS
 from exposure.published.cables import CABLES
 from exposure.published.modes import MODES

@@ -9,7 +9,8 @@ from exposure.antennas import catalogue
 from exposure.antennas.chains import half_space
 from exposure.antennas.model import Antenna
 from exposure.errors import SiteFileError
-from exposure.keys import Problem, Reading, nearest, read_table, unknown_word
+from exposure.keys.reading import Problem, Reading, read_table
+from exposure.keys.values import nearest, unknown_word
 from exposure.site.areas import area
 from exposure.site.emissions import transmission
 from exposure.site.model import Ground, Site, Transmission

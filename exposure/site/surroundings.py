@@ -2,7 +2,7 @@
 
 from exposure.antennas.materials import material
 from exposure.antennas.model import Structure
-from exposure.keys import Reading
+from exposure.keys.reading import Reading
 from exposure.published.soils import SOILS
 from exposure.site.model import Ground, Place
 from exposure.site.outlines import objection, opened
