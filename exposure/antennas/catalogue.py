@@ -5,7 +5,7 @@ from dataclasses import dataclass, replace
 
 from exposure.antennas import conductors, dipole, vertical
 from exposure.antennas.materials import MATERIAL_KEYS, material
-from exposure.antennas.model import Antenna, FeedLine, Structure, Wiring
+from exposure.antennas.model import Antenna, FeedLine, Wiring
 from exposure.antennas.structures import structure_wiring
 from exposure.keys.kinds import (
     Key,
@@ -20,16 +20,13 @@ from exposure.keys.kinds import (
     wire_size,
 )
 from exposure.keys.reading import Reading
-from fieldsolver import GeometryError
 
 __all__ = [
     "KINDS",
     "Kind",
     "antenna",
     "keys_of",
-    "objection",
     "settled",
-    "structure_objection",
     "structure_wiring",
     "variant",
     "wirings",
@@ -161,24 +158,6 @@ def wirings(antenna: Antenna, frequency: float, ground) -> tuple[Wiring, ...]:
         What the model cannot represent, in the operator's words.
     """
     return KINDS[antenna.kind].wirings(antenna, frequency, ground)
-
-
-def objection(antenna: Antenna, frequency: float, ground) -> str | None:
-    """Why an antenna cannot be modelled at a frequency [Hz] over the solver's ground; None where it can."""
-    try:
-        wirings(antenna, frequency, ground)
-    except GeometryError as error:
-        return str(error)
-    return None
-
-
-def structure_objection(structure: Structure, ground) -> str | None:
-    """Why a structure cannot be modelled over the solver's ground; None where it can."""
-    try:
-        structure_wiring(structure, ground)
-    except GeometryError as error:
-        return str(error)
-    return None
 
 
 def _feed_line(reading: Reading | None) -> FeedLine | None:

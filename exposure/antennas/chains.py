@@ -82,7 +82,7 @@ def ground_loads(
         raise fs.GeometryError(
             f"{name} stands on real ground (up = 0): how it is joined to the ground must be stated as "
             "ground_connection_ohm (a rod, a screen of radials, a measurement; 0 is taken as ideal). The "
-            "bare end of a wire is no connection: let it end at least one radius above the ground if there is none"
+            "bare end of a wire is no connection: let it end at least one radius above the ground instead"
         )
     if connection is not None and not (ends and real):
         why = "none of its ends stands on the ground (up = 0)" if real else "the ground is not real ground"
@@ -104,7 +104,7 @@ def _check_clearance(wire: fs.Wire, name: str):
             )
         if TOUCHES * wire.radius <= up < wire.radius:
             raise fs.GeometryError(
-                f"{name} has an end {up:.3g} m above the ground, less than its radius of {wire.radius:.3g} m: "
+                f"{name} has an end {up:.3g} m above the ground, less than its radius {wire.radius:.3g} m: "
                 "let it stand on the ground (up = 0) or end at least one radius above it"
             )
     if stands_on_ground(wire.start, wire.radius) and stands_on_ground(wire.end, wire.radius):

@@ -174,8 +174,8 @@ def _notes(antenna: Antenna) -> tuple[str, ...]:
     if antenna.feed_line is not None:
         return ()
     return (
-        "the outside of the feed line is not modelled: where the antenna is not balanced about its feed, or no "
-        "choke is fitted, fields near the feed line are not assessed",
+        "the outside of the feed line is not modelled: where the antenna is not balanced about its feed, or "
+        "no choke is fitted, fields near the feed line are not assessed",
     )
 
 

@@ -39,7 +39,7 @@ class Reading:
         return self.values.get(stem)
 
     def has(self, stem: str) -> bool:
-        """Whether the key was written, rightly or not."""
+        """Whether the key was written, rightly or not, misspelt or without its unit."""
         return stem in self.given
 
     def wrong(self, stem: str, message: str, where: tuple = ()):
@@ -56,7 +56,7 @@ class Reading:
 def read_table(raw, keys: tuple, title: str, path: tuple, problems: list, outside=None) -> Reading:
     """Values of one table by its keys; problems are appended, none is raised."""
     reading = Reading(title, path, problems, outside=outside or {})
-    explained = _tell_unknown(reading, raw, keys)
+    _tell_unknown(reading, raw, keys)
     for key in keys:
         written = [name for name in key.names if name in raw]
         if len(written) > 1:
@@ -65,7 +65,7 @@ def read_table(raw, keys: tuple, title: str, path: tuple, problems: list, outsid
         elif written:
             reading.given[key.stem] = written[0]
             _read_key(reading, key, raw[written[0]], keys)
-        elif key.required and key.stem not in explained:
+        elif key.required and not reading.has(key.stem):
             what = key.title(path) if isinstance(key, SubTable) else key.spelling
             problems.append(Problem(path, f"{title} needs {what}"))
         elif isinstance(key, SubTable):
@@ -104,17 +104,16 @@ def _read_inside(reading: Reading, key: SubTable, raw, outside):
     return tuple(inside) if key.many else inside[0]
 
 
-def _tell_unknown(reading: Reading, raw: dict, keys: tuple) -> set[str]:
-    """Tell of every key that the table does not have; stems that were probably meant."""
+def _tell_unknown(reading: Reading, raw: dict, keys: tuple):
+    """Tell of every key that the table does not have, and note which one was probably meant."""
     known = {name: key.stem for key in keys for name in key.names}
-    explained = set()
     for name in raw:
         if name in known:
             continue
-        key, message = _unknown(name, reading, keys, known)
-        explained |= {key} if key else set()
+        meant, message = _unknown(name, reading, keys, known)
+        if meant:
+            reading.given[meant] = name
         reading.problems.append(Problem(reading.path + (name,), message))
-    return explained
 
 
 def _unknown(name: str, reading: Reading, keys, known):

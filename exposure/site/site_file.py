@@ -5,7 +5,7 @@ from pathlib import Path
 
 import tomli
 
-from exposure.antennas import catalogue
+from exposure.antennas import catalogue, trial
 from exposure.antennas.chains import half_space
 from exposure.antennas.model import Antenna
 from exposure.errors import SiteFileError
@@ -17,6 +17,8 @@ from exposure.site.model import Ground, Site, Transmission
 from exposure.site.schema import TOP_KEYS
 from exposure.site.surroundings import ground, place, property_corners, structure
 from exposure.toml_places import line_of, lines
+
+_ANY_FREQUENCY = 1e6  # [Hz] to look at shapes that no transmission uses
 
 
 def read_site(path) -> Site:
@@ -115,7 +117,7 @@ def _settled(reading: Reading, antennas, emissions) -> list[Antenna | None]:
 
 
 def _with_lengths(antenna: Antenna, table: Reading, frequencies: list[float]) -> Antenna | None:
-    frequency = frequencies[0] if frequencies else 1e6
+    frequency = frequencies[0] if frequencies else _ANY_FREQUENCY
     settled = catalogue.settled(antenna, frequency)
     if settled == antenna or len(frequencies) == 1:
         return settled
@@ -128,22 +130,30 @@ def _with_lengths(antenna: Antenna, table: Reading, frequencies: list[float]) ->
 def _check_models(reading: Reading, antennas, structures, emissions, around: Ground):
     """Let every conductor be built once, so that what cannot be modelled is told now and with its line."""
     solver_ground = half_space(around.kind, around.relative_permittivity, around.conductivity)
-    for table, antenna in zip(reading["antenna"] or (), antennas, strict=True):
-        if antenna is None or not table.sound:
+    tables = (*(reading["antenna"] or ()), *(reading["structure"] or ()))
+    built = []
+    for table, owner in zip(tables, (*antennas, *structures), strict=True):
+        if owner is None or not table.sound:
             continue
-        for frequency in _frequencies(antenna, emissions)[:1] or [1e6]:
-            message = catalogue.objection(antenna, frequency, solver_ground)
-            if message:
-                table.wrong("kind", message)
-    for table, passive in zip(reading["structure"] or (), structures, strict=True):
-        message = passive and catalogue.structure_objection(passive, solver_ground)
+        frequency = (*_frequencies(owner, emissions), _ANY_FREQUENCY)[0]
+        message = trial.objection(owner, frequency, solver_ground)
         if message:
-            table.wrong("points", message)
+            table.wrong("kind" if table.has("kind") else "points", message)
+        else:
+            built.append((table, owner))
+    _check_meetings(built, solver_ground)
 
 
-def _frequencies(antenna: Antenna, emissions: list[Transmission | None]) -> list[float]:
+def _check_meetings(built, solver_ground):
+    table_of = {owner.name: table for table, owner in built}
+    for one, other in trial.meeting([owner for _, owner in built], _ANY_FREQUENCY, solver_ground):
+        message = f"touches or crosses '{one}' without being joined to it: move it, or let it end on '{one}'"
+        table_of[other].wrong("name", message)
+
+
+def _frequencies(owner, emissions: list[Transmission | None]) -> list[float]:
     return sorted(
-        {emission.frequency for emission in emissions if emission and emission.antenna == antenna.name}
+        {emission.frequency for emission in emissions if emission and emission.antenna == owner.name}
     )
 
 

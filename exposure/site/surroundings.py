@@ -19,7 +19,7 @@ def ground(reading: Reading) -> Ground | None:
             "the ground is a soil, or relative_permittivity with conductivity_s_per_m, or kind = "
             f'"perfect" or "none"; {"more than one is stated" if any(stated) else "none is stated"}',
         )
-    if len(numbers) == 1 and not reading.has("soil"):
+    if len(numbers) == 1 and reading.sound:
         reading.wrong(
             numbers[0], "relative_permittivity and conductivity_s_per_m go together; the other is not stated"
         )
