@@ -2,6 +2,7 @@
 
 import numpy as np
 from scipy import sparse
+from scipy.sparse.linalg import splu
 
 from fieldsolver.segments import Mesh
 
@@ -28,6 +29,12 @@ def basis(mesh: Mesh) -> sparse.csr_matrix:
     shape = (2 * mesh.count, int(unknown.sum()))
     data = np.concatenate(values), (np.concatenate(rows), np.concatenate(columns))
     return sparse.csr_matrix(data, shape=shape)
+
+
+def unknowns(basis_matrix: sparse.csr_matrix, ends: np.ndarray) -> np.ndarray:
+    """(N,) unknowns of end currents (2S,) that obey Kirchhoff's law: B^T B x = B^T ends. [A]"""
+    square = (basis_matrix.T @ basis_matrix).tocsc()
+    return splu(square).solve(basis_matrix.T @ ends)
 
 
 def ends_at_node(mesh: Mesh, segment: int, end: int) -> int:

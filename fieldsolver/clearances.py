@@ -26,8 +26,9 @@ def check_clearances(ends: np.ndarray, radius: np.ndarray, node_of_end: np.ndarr
     upper = np.triu(np.ones_like(joined), 1).astype(bool)
     for i, j in np.argwhere(upper & ~joined & (distance < touch)):
         raise GeometryError(
-            f"conductors {i} and {j} touch or cross without being joined: their axes are {distance[i, j]:.4g} m "
-            f"apart, their radii {radius[i]:.4g} and {radius[j]:.4g} m; join them at an end or move them apart"
+            f"conductors {i} and {j} touch or cross without being joined: their axes "
+            f"are {distance[i, j]:.4g} m apart, their radii {radius[i]:.4g} and {radius[j]:.4g} m; join them at an end "
+            "or move them apart"
         )
     for i, j in np.argwhere(upper & joined):
         if _folded(ends[i], ends[j], touch[i, j]):
@@ -36,8 +37,8 @@ def check_clearances(ends: np.ndarray, radius: np.ndarray, node_of_end: np.ndarr
             )
     narrow = np.argwhere(upper & ~joined & (distance < touch + 4 * np.maximum(radius[:, None], radius[None])))
     return tuple(
-        f"conductors {i} and {j} pass at {distance[i, j] - touch[i, j]:.4g} m without being joined, less than four "
-        "radii: fields in that gap are uncertain"
+        f"conductors {i} and {j} pass at {distance[i, j] - touch[i, j]:.4g} m without being joined, less "
+        "than four radii: fields in that gap are uncertain"
         for i, j in narrow
     )
 

@@ -254,3 +254,18 @@ def _graded(centre):
     left, right = centre[:, None], 1 - centre[:, None]
     nodes = np.concatenate([centre[:, None] - left * cube, centre[:, None] + right * cube], axis=1)
     return nodes, np.concatenate([left * weight, right * weight], axis=1)
+
+
+def line_potential(k: float, point, start, vector, radius_square) -> np.ndarray:
+    """Integral of e^{-jkR}/R along n segments seen from n points.
+
+    point, start, vector (n, 3) [m]; radius_square (n,) is added to R^2 [m2].  Returns (n,) [1].
+    """
+    length = np.linalg.norm(vector, axis=1)
+    offset = point - start
+    along = np.einsum("nc,nc->n", offset, vector) / length
+    square = np.maximum((offset**2).sum(axis=1) - along**2, 0) + radius_square
+    static = _inner_integral(k, along, length, np.sqrt(np.maximum(square, 1e-24))).sum(axis=0)
+    s, w = gauss(5)
+    rest = _smooth_rest(k, square[:, None] + (along[:, None] - length[:, None] * s) ** 2)
+    return static + (rest @ w) * length
