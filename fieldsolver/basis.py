@@ -34,7 +34,7 @@ def basis(mesh: Mesh) -> sparse.csr_matrix:
 def unknowns(basis_matrix: sparse.csr_matrix, ends: np.ndarray) -> np.ndarray:
     """(N,) unknowns of end currents (2S,) that obey Kirchhoff's law: B^T B x = B^T ends. [A]"""
     square = (basis_matrix.T @ basis_matrix).tocsc()
-    return splu(square).solve(basis_matrix.T @ ends)
+    return splu(square.astype(ends.dtype)).solve(basis_matrix.T @ ends)
 
 
 def ends_at_node(mesh: Mesh, segment: int, end: int) -> int:

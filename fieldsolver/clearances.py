@@ -27,8 +27,8 @@ def check_clearances(ends: np.ndarray, radius: np.ndarray, node_of_end: np.ndarr
     for i, j in np.argwhere(upper & ~joined & (distance < touch)):
         raise GeometryError(
             f"conductors {i} and {j} touch or cross without being joined: their axes "
-            f"are {distance[i, j]:.4g} m apart, their radii {radius[i]:.4g} and {radius[j]:.4g} m; join them at an end "
-            "or move them apart"
+            f"are {distance[i, j]:.4g} m apart, their radii {radius[i]:.4g} and {radius[j]:.4g} m; join them "
+            "at an end or move them apart"
         )
     for i, j in np.argwhere(upper & joined):
         if _folded(ends[i], ends[j], touch[i, j]):

@@ -76,8 +76,8 @@ def _check(points, problem):
         close[i : i + 1024] = (distance < RADII * mesh.radius[None]).any(axis=1)
     if below.any() or close.any():
         raise PointError(
-            f"{int(below.sum())} points are below ground, {int(close.sum())} within three radii of a conductor: "
-            "no field is given there",
+            f"{int(below.sum())} points are below ground, {int(close.sum())} within three radii of a "
+            "conductor: no field is given there",
             below | close,
         )
 

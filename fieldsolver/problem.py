@@ -85,8 +85,8 @@ def _end(grid: Mesh, item, what: str) -> tuple[int, int]:
         raise GeometryError(f"a {what} at the free end of conductor {item.wire}: no current flows there")
     if 0 < item.position < 1 and meeting > 2:
         raise GeometryError(
-            f"a {what} at {item.position:.4g} of conductor {item.wire}, where another conductor is joined: cut "
-            "the conductor there and put it at the end that is meant"
+            f"a {what} at {item.position:.4g} of conductor {item.wire}, where another conductor is joined: "
+            "cut the conductor there and put it at the end that is meant"
         )
     return segment, end
 
@@ -104,11 +104,11 @@ def _check_connections(grid: Mesh, load_ends):
         segments = np.flatnonzero((grid.nodes == node).any(axis=1))
         if node not in connected:
             raise GeometryError(
-                f"conductor {grid.wire[segments[0]]} ends on real ground: state its ground connection as a load "
-                "at that end (0 for an ideal one)"
+                f"conductor {grid.wire[segments[0]]} ends on real ground: state its ground connection as a "
+                "load at that end (0 for an ideal one)"
             )
         if len(segments) > 1:
             raise GeometryError(
-                f"conductors {sorted(set(grid.wire[segments].tolist()))} meet on real ground: end one there and "
-                "join the others above it"
+                f"conductors {sorted(set(grid.wire[segments].tolist()))} meet on real ground: end one there "
+                "and join the others above it"
             )

@@ -5,7 +5,7 @@ from dataclasses import dataclass, replace
 import numpy as np
 from scipy import sparse
 
-from fieldsolver.basis import basis
+from fieldsolver.basis import basis, unknowns
 from fieldsolver.impedance_matrix import impedance_matrix
 from fieldsolver.segments import Mesh
 
@@ -36,12 +36,8 @@ def boundary_residual(currents) -> float:
     matrix = impedance_matrix(fine)
     middle = (currents.ends[::2] + currents.ends[1::2]) / 2
     ends = np.column_stack([currents.ends[::2], middle, middle, currents.ends[1::2]]).reshape(-1)
-    unknowns = (
-        sparse.linalg.lsqr(fine.basis, ends.real, atol=1e-14, btol=1e-14)[0]
-        + 1j * (sparse.linalg.lsqr(fine.basis, ends.imag, atol=1e-14, btol=1e-14)[0])
-    )
     driven = (fine.feed_rows @ fine.basis).T @ currents.feed_voltages
-    residual = driven - matrix @ unknowns
+    residual = driven - matrix @ unknowns(fine.basis, ends)
     return float(np.sqrt((np.abs(residual) ** 2 / np.abs(matrix.diagonal())).sum() / currents.accepted_power))
 
 

@@ -1,9 +1,9 @@
 """The impedance that a prescribed current has by the solver's own matrix."""
 
 import numpy as np
-from scipy.sparse.linalg import lsqr
 
 import fieldsolver as fs
+from fieldsolver.basis import unknowns
 from fieldsolver.impedance_matrix import impedance_matrix
 from fieldsolver.problem import problem
 
@@ -12,7 +12,7 @@ def reaction(wires, ground, frequency, current, loads=(), segments_per_wavelengt
     """x^T Z x for the current (function of points (n, 3), A) along each wire, of one ampere at its feed."""
     case = problem(tuple(wires), (), frequency, ground, tuple(loads), segments_per_wavelength)
     points = np.stack([case.mesh.start, case.mesh.end], axis=1).reshape(-1, 3)
-    x = lsqr(case.basis, current(points), atol=1e-15, btol=1e-15)[0]
+    x = unknowns(case.basis, current(points))
     return complex(x @ impedance_matrix(case) @ x)
 
 
