@@ -13,7 +13,7 @@ import numpy as np
 from fieldsolver.constants import FREE_SPACE_IMPEDANCE
 from fieldsolver.kernels import cosine_and_minus_sine
 
-CELLS = 1 << 14  # elements of one block: about 1 MB of work space
+CELLS = 1 << 13  # pairs of one block: about 0.5 MB of work space, fastest measured
 
 
 @dataclass(frozen=True)

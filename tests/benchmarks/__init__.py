@@ -1,0 +1,1 @@
+"""Speed as ratios to work that everybody knows: ``python -m tests.benchmarks``."""
