@@ -100,9 +100,9 @@ FEED_LINE_KEYS = (
 COMMON_KEYS = (
     text("name", required=True, help="what the antenna is called; no two alike"),
     choice("kind", KINDS, "kind of antenna", required=True, help="one of the kinds of this list"),
-    point("position", "east, north", default=(0.0, 0.0), help="of the reference point; [0, 0] unless stated"),
-    length("height", default=0.0, help="of the reference point above ground; 0 unless stated"),
-    angle("bearing", default=0.0, help="clockwise from true north; 0 unless stated"),
+    point("position", "east, north", default=(0.0, 0.0), help="of the reference point"),
+    length("height", default=0.0, help="of the reference point above ground"),
+    angle("bearing", default=0.0, help="clockwise from true north"),
     *MATERIAL_KEYS,
     impedance(
         "ground_connection",

@@ -35,7 +35,7 @@ FEED_KEYS = (
     number("position", allowed=FRACTION, required=True, help=_WHERE),
     number("relative_voltage", allowed=NOT_NEGATIVE, help="of this feed, for arrays; 1 unless stated"),
     number("relative_current", allowed=NOT_NEGATIVE, help="instead of relative_voltage"),
-    angle("phase", default=0.0, help="of that voltage or current; 0 unless stated"),
+    angle("phase", default=0.0, help="of that voltage or current"),
 )
 LOAD_KEYS = (
     integer("conductor", Range(1), required=True, help=_WHICH),
@@ -47,7 +47,7 @@ LOAD_KEYS = (
         "connection",
         ("series", "parallel"),
         default="series",
-        help="of these to each other; series unless stated",
+        help="of these to each other",
     ),
 )
 KEYS = (

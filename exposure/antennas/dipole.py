@@ -18,14 +18,15 @@ KEYS = (
     angle(
         "droop",
         Range(0, math.radians(85)),
-        help="both arms below the horizontal (inverted V); 0 unless stated",
+        default=0.0,
+        help="both arms below the horizontal (inverted V)",
     ),
     length("end_height", Range(0), help="instead of droop_deg: height of the two ends"),
     number(
         "feed_position",
         allowed=Range(0, 1, low_open=True, high_open=True),
         default=0.5,
-        help="fraction of the wire from the end away from the bearing; 0.5 (the middle) unless stated",
+        help="fraction of the wire from the end away from the bearing",
     ),
 )
 
@@ -59,7 +60,7 @@ def shape(reading: Reading) -> Dipole | None:
     return Dipole(
         reading["length"],
         reading["wire_radius"],
-        reading["droop"] or 0.0,
+        reading["droop"],
         end_height,
         reading["feed_position"],
     )

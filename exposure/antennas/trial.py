@@ -7,6 +7,8 @@ from exposure.antennas.catalogue import structure_wiring, wirings
 from exposure.antennas.model import Antenna, Structure, Wiring
 from fieldsolver.problem import problem
 
+ModelError = fs.FieldSolverError  # for rows that do not know the solver
+
 _COUNTING = " (wires are counted from 0, along the conductors in the order of the file)"
 
 

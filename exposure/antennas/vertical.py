@@ -15,9 +15,9 @@ from exposure.keys.values import POSITIVE, Range
 KEYS = (
     length("length", POSITIVE, help="of the vertical part; a quarter wave where only one frequency is used"),
     wire_size(required=True, help="size of the vertical part"),
-    integer("radials", Range(0, 120), default=0, help="number of elevated radials; 0 unless stated"),
+    integer("radials", Range(0, 120), default=0, help="number of elevated radials"),
     length("radial_length", POSITIVE, help="of each radial; a quarter wave where only one frequency is used"),
-    angle("radial_droop", Range(0, math.radians(85)), help="radials below the horizontal; 0 unless stated"),
+    angle("radial_droop", Range(0, math.radians(85)), default=0.0, help="radials below the horizontal"),
     wire_size("radial_wire_radius", help="size of the radials; as the vertical part unless stated"),
 )
 
@@ -52,7 +52,7 @@ def shape(reading: Reading) -> Vertical | None:
         reading["wire_radius"],
         reading["radials"],
         reading["radial_length"],
-        reading["radial_droop"] or 0.0,
+        reading["radial_droop"],
         reading["radial_wire_radius"],
     )
 

@@ -28,7 +28,15 @@ class Key:
 
     @property
     def spelling(self) -> str:
+        """Its names."""
         return " or ".join(self.names)
+
+    @property
+    def need(self) -> str:
+        """Whether it must be written, or what holds if it is not; empty where its help says so."""
+        if self.required:
+            return "required"
+        return "" if self.default is None else f"{_words(self.default)} unless stated"
 
 
 @dataclass(frozen=True)
@@ -48,6 +56,11 @@ class SubTable:
     @property
     def names(self):
         return {self.stem: 1.0}
+
+    @property
+    def need(self) -> str:
+        """Whether it must be written."""
+        return "required" if self.required else ""
 
     def title(self, path: tuple) -> str:
         """As it is written in a file, inside the table at a path."""
@@ -139,6 +152,17 @@ def points(stem: str, axes: str, at_least: int, allowed: Range = ANY, **more) ->
 def impedance(stem: str, **more) -> Key:
     """An impedance in ohms, a number or [resistance, reactance]; its resistance is not negative."""
     return Key(stem, lambda raw, _: values.impedance(raw), **_named(stem, {f"{stem}_ohm": 1}), **more)
+
+
+def _words(default) -> str:
+    match default:
+        case bool():
+            return "true" if default else "false"
+        case tuple():
+            return f"[{', '.join(f'{part:g}' for part in default)}]"
+        case float() | int():
+            return f"{default:g}"
+    return f'"{default}"'
 
 
 def _named(stem: str, names) -> dict:

@@ -148,7 +148,7 @@ TOP_KEYS = (
         ("upper_bound", "best_estimate", "margin"),
         "decision rule",
         default="upper_bound",
-        help="upper_bound unless stated",
+        help="what is compared with the limit",
     ),
     number(
         "margin",
@@ -160,7 +160,7 @@ TOP_KEYS = (
         ("peak", "body_average"),
         "spatial rule",
         default="peak",
-        help="peak unless stated; body_average where the document allows it",
+        help="peak, or body_average where the document allows it",
     ),
     date("date", help="of the assessment, printed"),
     text("operator", help="printed"),

@@ -185,7 +185,7 @@ def test_the_braid_on_either_half_of_a_symmetric_dipole_is_a_mirror_image(droop)
 
 
 def test_the_feed_line_of_an_off_centre_antenna_carries_current_on_its_outside():
-    """Nothing mirrors one state into the other, so impedances differ: by more than 1 %, far beyond rounding."""
+    """Nothing mirrors one state into the other, so impedances differ: by more than 1 %, beyond rounding."""
     line = replace(DOWN, points=((0.0, -2.0, 0.0), (0.0, -2.0, -5.0)))
     antenna = replace(DIPOLE, shape=Dipole(10.0, 1e-3, feed_position=0.3), feed_line=line)
 

@@ -1,0 +1,91 @@
+"""``exposure assess SITE``: the whole job, and its files all at once or not at all."""
+
+import os
+import shutil
+import tempfile
+from dataclasses import asdict
+from pathlib import Path
+
+from exposure.antennas.trial import ModelError
+from exposure.assessment.assess import assess
+from exposure.errors import ExposureError
+from exposure.outputs.figures import write_figures
+from exposure.outputs.report import write_report
+from exposure.outputs.result_file import write_geojson, write_result
+from exposure.site.site_file import read_site
+from exposure.verbs.screen import figures, print_json, print_table, progress
+
+EXIT_CODES = {"within limits": 0, "exceeds limits": 1, "cannot be decided": 3}
+FILES = ("assessment.json", "boundaries.geojson", "report.pdf", "figures")
+
+
+def run(arguments) -> int:
+    """Assess, write the files, print the verdict; its exit code."""
+    site = read_site(arguments.site)
+    directory = Path(arguments.output or Path("results") / Path(arguments.site).stem)
+    try:
+        assessment = assess(site, progress=progress)
+    except ModelError as error:
+        raise ExposureError(f"{site.file} cannot be modelled: {error}") from None
+    _write(assessment, directory)
+    if arguments.json:
+        print_json(_summary(assessment, directory))
+    else:
+        _print(assessment, directory)
+    return EXIT_CODES[assessment.verdict]
+
+
+def _write(assessment, directory: Path):
+    """All files in a new directory beside, then moved; a failure leaves what was there before."""
+    directory.parent.mkdir(parents=True, exist_ok=True)
+    fresh = Path(tempfile.mkdtemp(prefix=f".{directory.name}-", dir=directory.parent))
+    try:
+        write_result(assessment, fresh / "assessment.json")
+        if assessment.site.place_deg is not None:
+            write_geojson(assessment, fresh / "boundaries.geojson")
+        write_figures(assessment, fresh / "figures")
+        write_report(assessment, fresh / "report.pdf")
+        directory.mkdir(exist_ok=True)
+        for name in FILES:
+            _move(fresh / name, directory / name)
+    finally:
+        shutil.rmtree(fresh, ignore_errors=True)
+
+
+def _move(new: Path, old: Path):
+    """Put a new file or directory in the place of the old one; an old one without a new one is stale."""
+    if old.is_dir():
+        shutil.rmtree(old)
+    elif old.exists():
+        old.unlink()
+    if new.exists():
+        os.replace(new, old)
+
+
+def _print(assessment, directory: Path):
+    print(f"{assessment.site.name}: {assessment.verdict.upper()}")
+    for words in (*assessment.reasons, *assessment.conditions):
+        print(f"  {words}")
+    rows = [
+        (area.name, result.limits, figures(result.exposure_ratio), _cause(result), result.verdict)
+        for area in assessment.areas
+        for result in area.results
+    ]
+    if rows:
+        print()
+        print_table(("area", "limits", "exposure ratio", "mostly from", "verdict"), rows)
+    for caution in assessment.warnings:
+        print(f"caution: {caution}")
+    for thing in assessment.not_assessed:
+        print(f"not assessed: {thing}")
+    print(f"written: {directory}/ ({', '.join(name for name in FILES if (directory / name).exists())})")
+
+
+def _cause(result) -> str:
+    return "-" if result.governing is None else result.governing.transmission
+
+
+def _summary(assessment, directory: Path) -> dict:
+    kept = ("verdict", "reasons", "conditions", "areas", "property", "warnings", "not_assessed")
+    everything = asdict(assessment)
+    return {"directory": str(directory), **{name: everything[name] for name in kept}}
