@@ -5,6 +5,7 @@ import os
 import signal
 import subprocess
 import sys
+import time
 from pathlib import Path
 
 import pytest
@@ -205,6 +206,16 @@ def test_the_package_gives_its_public_names_without_loading_them_first():
     assert told.stdout.split() == ["read_site", "SiteFileError", "False"], told.stderr
 
 
+def opened_once_read(pipe, job) -> int:
+    """A pipe's writing end, opened as soon as the job waits at the other one."""
+    while job.poll() is None:
+        try:
+            return os.open(pipe, os.O_WRONLY | os.O_NONBLOCK)
+        except OSError:  # nobody reads yet
+            time.sleep(0.01)
+    raise AssertionError(job.communicate())
+
+
 def test_an_interrupt_ends_with_code_130_and_a_word(tmp_path):
     """The site file is a pipe, so that the program is certainly waiting for it when it is interrupted."""
     pipe = tmp_path / "pipe.toml"
@@ -212,9 +223,10 @@ def test_an_interrupt_ends_with_code_130_and_a_word(tmp_path):
     command = [sys.executable, "-m", "exposure", "check", str(pipe)]
     job = subprocess.Popen(command, cwd=ROOT, stdout=subprocess.PIPE, stderr=subprocess.PIPE, text=True)
 
-    with pipe.open("w"):
-        job.send_signal(signal.SIGINT)
-        _, told = job.communicate(timeout=60)
+    writer = opened_once_read(pipe, job)
+    job.send_signal(signal.SIGINT)
+    _, told = job.communicate(timeout=60)
+    os.close(writer)
 
     assert job.returncode == 130
     assert "interrupted" in told and "Traceback" not in told
