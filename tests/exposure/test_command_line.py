@@ -173,7 +173,15 @@ def test_antennas_speaks_json(capsys):
     ]
 
 
-LOADED = "import sys\nfrom exposure.command_line import main\ntry:\n    main({})\nexcept SystemExit:\n    pass\nprint(*sys.modules, file=sys.stderr)"
+LOADED = """
+import sys
+from exposure.command_line import main
+try:
+    main({})
+except SystemExit:
+    pass
+print(*sys.modules, file=sys.stderr)
+"""
 
 
 @pytest.mark.parametrize(
@@ -200,7 +208,8 @@ def test_a_small_job_loads_no_large_library(line, absent):
 def test_the_package_gives_its_public_names_without_loading_them_first():
     """The names are those of design, section 6."""
     told = python(
-        "import exposure, sys; print(exposure.read_site.__name__, exposure.SiteFileError.__name__, 'matplotlib' in sys.modules)"
+        "import exposure, sys\n"
+        "print(exposure.read_site.__name__, exposure.SiteFileError.__name__, 'matplotlib' in sys.modules)"
     )
 
     assert told.stdout.split() == ["read_site", "SiteFileError", "False"], told.stderr
@@ -234,7 +243,10 @@ def test_an_interrupt_ends_with_code_130_and_a_word(tmp_path):
 
 def test_an_internal_fault_ends_with_code_70_and_one_line(lot):
     """Made by taking away the place where answers go, which the program has no answer to."""
-    code = f"import sys; sys.stdout.close()\nfrom exposure.command_line import main\nsys.exit(main(['check', {lot!r}]))"
+    code = (
+        "import sys; sys.stdout.close()\n"
+        f"from exposure.command_line import main\nsys.exit(main(['check', {lot!r}]))"
+    )
 
     told = python(code)
 

@@ -68,7 +68,7 @@ def test_soils_are_those_of_their_sources(soil, permittivity, conductivity):
     [("silver", 2.52e-7), ("copper", 2.61e-7), ("aluminium", 3.26e-7), ("brass", 5.01e-7)],
 )
 def test_metals_have_the_surface_resistance_of_the_textbook(metal, surface_resistance):
-    """Rs = sqrt(pi f mu0 / sigma) [ohm at 1 Hz]; Ramo, Whinnery and Van Duzer (from memory); printed to 3 digits: 0.5 %."""
+    """Rs = sqrt(pi f mu0 / sigma) [ohm at 1 Hz]; Ramo, Whinnery, Van Duzer (from memory), 3 digits: 0.5 %."""
     computed = math.sqrt(math.pi * 4e-7 * math.pi / METALS[metal])
 
     assert computed == pytest.approx(surface_resistance, rel=5e-3)
@@ -110,7 +110,7 @@ def test_no_more_loss_is_credited_than_any_other_source_prints(cable, f, printed
     ("cable", "f", "decibels"), [("RG-213", 14.2, 0.62 * math.sqrt(14.2) + 0.006 * 14.2)]
 )
 def test_the_law_is_credited_where_it_is_the_lowest(cable, f, decibels):
-    """k1 sqrt(f) + k2 f per 100 m (facts/formulas.md 15, from memory): 2.42 dB, where the table prints 0.8 dB/100 ft."""
+    """k1 sqrt(f) + k2 f per 100 m (from memory): 2.42 dB, where the table prints 0.8 dB/100 ft."""
     assert attenuation(cable, f * 1e6).per_metre * 100 == pytest.approx(decibels, rel=1e-12)
     assert cable in LAW
 

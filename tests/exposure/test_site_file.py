@@ -50,7 +50,7 @@ def test_the_hash_is_that_of_the_bytes_and_the_text_is_kept(site):
 
 
 def test_what_is_not_stated_is_taken_on_the_safe_side(site):
-    """No loss, no duty factor below one, no pauses, perfect metal, spatial peak, upper bound (design, section 5)."""
+    """No loss, no duty factor below one, no pauses, perfect metal, spatial peak, upper bound."""
     bare = STATION.replace('material = "copper"\n', "").replace('mode = "ssb"\n', "")
     bare = bare.replace("transmit_minutes = 2\nreceive_minutes = 4\n", "")
     bare = bare.replace('[transmission.line]\ncable = "RG-213"\nlength_m = 20\n', "")

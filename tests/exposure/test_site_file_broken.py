@@ -4,11 +4,11 @@ import re
 from pathlib import Path
 
 import pytest
+from broken_cases import CASES, expected
+from stations import changed
 
 from exposure.errors import SiteFileError
 from exposure.site.site_file import read_site
-from broken_cases import CASES, expected
-from stations import changed
 
 BROKEN = sorted((Path(__file__).parent / "broken").glob("*.toml"))
 
@@ -48,7 +48,7 @@ def test_there_are_at_least_forty_broken_files():
 @pytest.mark.parametrize(
     ("text", "line", "word"),
     [
-        ("version = 1\nname = \"x\n", 2, "not valid TOML"),
+        ('version = 1\nname = "x\n', 2, "not valid TOML"),
         ("version = 1\nversion = 1\n", 2, "not valid TOML"),
         ("version = 1\n[ground\n", 2, "not valid TOML"),
         ("version = 1\nname = unquoted\n", 2, "not valid TOML"),
