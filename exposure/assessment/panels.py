@@ -104,18 +104,22 @@ def sampled(function, lower, upper, orders):
     return Panels(lower, upper, logs, _tails(logs))
 
 
-def refined(function, lower, upper, orders, direction):
+def refined(function, lower, upper, orders, direction, wanted):
     """Leaves of the panels that start from `lower`, `upper`, (n, d).
 
     direction : Panels -> (n,) int, the direction to halve a panel across, or -1 to keep it.
+    wanted : lower, upper -> (n,) bool; other panels are dropped before anything is evaluated.
     """
     leaves = []
-    while len(lower):
-        panels = sampled(function, lower, upper, orders)
+    while True:
+        keep = wanted(lower, upper)
+        panels = sampled(function, lower[keep], upper[keep], orders)
         across = direction(panels)
         leaves.append(panels[across < 0])
-        lower, upper = halved(panels.lower[across >= 0], panels.upper[across >= 0], across[across >= 0])
-    return joined(leaves)
+        open_ = across >= 0
+        if not open_.any():
+            return joined(leaves)
+        lower, upper = halved(panels.lower[open_], panels.upper[open_], across[open_])
 
 
 def joined(parts):
