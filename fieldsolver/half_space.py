@@ -1,14 +1,141 @@
-"""What a real ground adds beyond its closed-form image."""
+"""What a real ground adds beyond its closed-form image, to the matrix and to the fields.
 
-from fieldsolver.errors import SolutionError
+The reflected potentials K minus the image's share (``reflection``) are smooth, so
+currents act as few points (``pieces``).  With F' = dF/drho and the horizontal unit vector e from
+source to point, the vector potential of a moment M is K_xx M_h - F' e M_z along the ground and
+K_zz M_z + F' e . M_h upwards; charges have the potential K_phi (docs/theory.md).
+"""
+
+from dataclasses import dataclass
+
+import numpy as np
+from scipy import sparse
+
+from fieldsolver.constants import FREE_SPACE_IMPEDANCE, SPEED_OF_LIGHT
 from fieldsolver.ground import LossyGround
+from fieldsolver.images import Image, image
+from fieldsolver.kernels import line_potential
+from fieldsolver.pieces import ground_ends, pieces
+from fieldsolver.reflection import Reflection
+
+PAIRS = 1 << 16
 
 
+@dataclass(frozen=True)
 class HalfSpace:
-    """The smooth rest of the reflected potentials."""
+    """The rest of a real ground: wavenumber k in air [rad/m], closed-form image, reflected potentials."""
+
+    k: float
+    image: Image
+    reflection: Reflection
+
+    def matrix(self, mesh, basis: sparse.csr_matrix) -> np.ndarray:
+        """(N, N) part of the impedance matrix over j k eta/4 pi."""
+        few = pieces(mesh, self.k)
+        count = len(few.points)
+        vector, scalar = np.zeros((count, count), complex), np.zeros((count, count), complex)
+        least = float(mesh.radius.min())
+        i, j = np.triu_indices(count)
+        for low in range(0, len(i), PAIRS):
+            part = i[low : low + PAIRS], j[low : low + PAIRS]
+            vector[part], scalar[part] = self._interactions(few, *part, least)
+        for values in (vector, scalar):
+            values[j, i] = values[i, j]
+        moment, slope = (few.moment @ basis).tocsr(), (few.slope @ basis).tocsr()
+        out = moment.T @ (moment.T @ vector).T - slope.T @ (slope.T @ scalar).T / self.k**2
+        return out - self._ground_ends(mesh, basis) / self.k**2
+
+    def _interactions(self, few, i, j, least):
+        """t . K t' and K_phi for pairs of points, the image's share taken out. [1/m]"""
+        rho, zeta, unit = _cylinder(few.points[i], few.points[j], least)
+        rest = self.reflection.potentials(rho, zeta)
+        test, source = few.tangents[i], few.tangents[j]
+        vector = rest["k_xx"] * (test[:, :2] * source[:, :2]).sum(axis=1)
+        vector += rest["k_zz"] * test[:, 2] * source[:, 2]
+        slope = rest["f_rho_over_rho"] * rho
+        vector += slope * (test[:, 2] * (source[:, :2] * unit).sum(axis=1))
+        vector -= slope * (source[:, 2] * (test[:, :2] * unit).sum(axis=1))
+        return vector, rest["k_phi"]
+
+    def _ground_ends(self, mesh, basis):
+        """Charges of ends on the ground with all other charges, direct and image together.
+
+        A ring charge of the wire's radius is as far from the tube above it as from a line one
+        radius away.  The static potential of an end on itself is left out: the stated ground
+        connection stands for it.
+        """
+        points, ends = ground_ends(mesh)
+        if not len(points):
+            return 0.0
+        count, segments = len(points), mesh.count
+        own = np.array([(mesh.start == p).all(axis=1) | (mesh.end == p).all(axis=1) for p in points])
+        potential = line_potential(
+            self.k,
+            np.repeat(points, segments, axis=0),
+            np.tile(mesh.start, (count, 1)),
+            np.tile(mesh.end - mesh.start, (count, 1)),
+            (own * mesh.radius**2).reshape(-1),
+        ).reshape(count, segments)
+        across = sparse.csr_matrix(np.kron(potential / mesh.length, np.array([[-1.0, 1.0]]))) @ basis
+        distance = np.linalg.norm(points[:, None] - points[None], axis=2) + np.eye(count)
+        mutual = np.exp(-1j * self.k * distance) / distance
+        np.fill_diagonal(mutual, -1j * self.k)
+        here = ends @ basis
+        between = (here.T @ across).toarray()
+        return (1 + self.image.charge) * (between + between.T + here.T @ (here.T @ mutual).T)
+
+    def fields(self, mesh, ends, points):
+        """E (n, 3) [V/m] and H (n, 3) [A/m] of the rest at points (n, 3)."""
+        few = pieces(mesh, self.k)
+        moment = (few.moment @ ends)[:, None] * few.tangents
+        slope = few.slope @ ends
+        least = float(mesh.radius.min())
+        rows = max(1, PAIRS // len(few.points))
+        parts = [
+            self._fields(points[i : i + rows], few.points, moment, slope, least)
+            for i in range(0, len(points), rows)
+        ]
+        return tuple(np.concatenate(fields) for fields in zip(*parts, strict=True))
+
+    def _fields(self, points, sources, moment, slope, least):
+        shape = (len(points), len(sources))
+        rho, zeta, unit = _cylinder(
+            np.repeat(points, shape[1], axis=0), np.tile(sources, (shape[0], 1)), least
+        )
+        rest = {name: values.reshape(shape) for name, values in self.reflection.fields(rho, zeta).items()}
+        x, y = unit[:, 0].reshape(shape), unit[:, 1].reshape(shape)
+        f_over_rho = rest["f_rho_over_rho"]
+        f_rho = f_over_rho * rho.reshape(shape)
+        mx, my, mz = moment.T
+        charge = slope / self.k**2
+        electric = [
+            rest["k_xx"] @ mx - (f_rho * x) @ mz + (rest["k_phi_rho"] * x) @ charge,
+            rest["k_xx"] @ my - (f_rho * y) @ mz + (rest["k_phi_rho"] * y) @ charge,
+            rest["k_zz"] @ mz + (f_rho * x) @ mx + (f_rho * y) @ my + rest["k_phi_zeta"] @ charge,
+        ]
+        turn = rest["laplacian_f"] - 2 * f_over_rho
+        xx, xy, yy = f_over_rho + turn * x * x, turn * x * y, f_over_rho + turn * y * y
+        magnetic = [
+            (rest["tm_rho"] * y) @ mz + xy @ mx + (yy - rest["k_xx_zeta"]) @ my,
+            -(rest["tm_rho"] * x) @ mz - (xx - rest["k_xx_zeta"]) @ mx - xy @ my,
+            (rest["k_xx_rho"] * x) @ my - (rest["k_xx_rho"] * y) @ mx,
+        ]
+        factor = -1j * self.k * FREE_SPACE_IMPEDANCE / (4 * np.pi)
+        return factor * np.stack(electric, axis=1), np.stack(magnetic, axis=1) / (4 * np.pi)
 
 
 def half_space(ground, angular_frequency: float) -> HalfSpace | None:
-    if isinstance(ground, LossyGround):
-        raise SolutionError("real ground is being built: nothing is solved over it yet")
-    return None
+    """The rest of a real ground, None over any other."""
+    if not isinstance(ground, LossyGround):
+        return None
+    k = angular_frequency / SPEED_OF_LIGHT
+    reflection = Reflection(ground.complex_permittivity(angular_frequency), k)
+    return HalfSpace(k, image(ground, angular_frequency), reflection)
+
+
+def _cylinder(points, sources, least):
+    """Horizontal distance (at least ``least``), sum of heights, and unit vector in plan (0 above)."""
+    across = points[:, :2] - sources[:, :2]
+    rho = np.hypot(across[:, 0], across[:, 1])
+    unit = across / np.maximum(rho, 1e-300)[:, None]
+    return np.maximum(rho, least), points[:, 2] + sources[:, 2], unit

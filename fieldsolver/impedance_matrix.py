@@ -25,8 +25,11 @@ def impedance_matrix(problem) -> np.ndarray:
     if image is not None:
         mirrored = Sources(mesh.start * MIRROR, (mesh.end - mesh.start) * MIRROR, True)
         half += _half(mesh, basis, k, mirrored, image.tensor, image.charge)
-    half *= 1j * k * FREE_SPACE_IMPEDANCE / (4 * np.pi)
+    factor = 1j * k * FREE_SPACE_IMPEDANCE / (4 * np.pi)
+    half *= factor
     half += half.T.copy()
+    if problem.half_space is not None:
+        half += factor * problem.half_space.matrix(mesh, basis)
     rows = problem.load_rows @ basis
     lumped = rows.T @ sparse.diags(problem.load_impedances) @ rows + basis.T @ problem.skin @ basis
     half += lumped.toarray()

@@ -15,6 +15,7 @@ from fieldsolver.errors import PointError
 from fieldsolver.ground import FreeSpace
 from fieldsolver.images import MIRROR
 from fieldsolver.kernels import gauss
+from fieldsolver.pieces import ground_ends
 from fieldsolver.radiation import Elements, fields_of_elements
 
 RADII = 3.0
@@ -52,18 +53,13 @@ def near_field(currents, points) -> Field:
     problem = currents.problem
     _check(points, problem)
     wires = _source(problem.mesh, currents.ends)
-    electric, magnetic = _fields(problem.k, points, wires)
+    parts = [_fields(problem.k, points, wires)]
     if problem.image is not None:
-        for field, part in zip(
-            (electric, magnetic), _fields(problem.k, points, wires.mirrored(problem.image)), strict=True
-        ):
-            field += part
+        parts.append(_fields(problem.k, points, wires.mirrored(problem.image)))
     if problem.half_space is not None:
-        for field, part in zip(
-            (electric, magnetic), problem.half_space.fields(problem, currents.ends, points), strict=True
-        ):
-            field += part
-    return Field(electric, magnetic)
+        parts.append(_ground_ends(problem, points, currents.ends))
+        parts.append(problem.half_space.fields(problem.mesh, currents.ends, points))
+    return Field(*(sum(fields) for fields in zip(*parts, strict=True)))
 
 
 def _check(points, problem):
@@ -150,6 +146,14 @@ def _fields(k, points, source: _Source):
                 field += part
         electric[group], magnetic[group] = e, h
     return electric, magnetic
+
+
+def _ground_ends(problem, points, ends):
+    """Fields of the charges where wires end on real ground, with their images."""
+    at, rows = ground_ends(problem.mesh)
+    nothing = np.zeros((len(at), 3))
+    slopes = (1 + problem.image.charge) * (rows @ ends)
+    return fields_of_elements(problem.k, points, Elements(at, nothing, nothing, slopes))
 
 
 def _rule(count, segments):
