@@ -59,7 +59,7 @@ def _stop(message: str, code: int) -> int:
 def _parser() -> argparse.ArgumentParser:
     parser = argparse.ArgumentParser(
         prog="exposure",
-        description="Radio-frequency exposure near antennas: from a site file to limits, fields and a report.",
+        description="Radio-frequency exposure near antennas: from a site file to fields and a report.",
         epilog="exposure VERB --help tells more. docs/site-file.md describes the site file.",
     )
     parser.add_argument("--version", action="version", version=f"exposure {__version__}")

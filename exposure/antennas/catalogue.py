@@ -20,6 +20,7 @@ from exposure.keys.kinds import (
     wire_size,
 )
 from exposure.keys.reading import Reading
+from exposure.keys.values import DISTANCE
 
 __all__ = [
     "KINDS",
@@ -101,7 +102,7 @@ COMMON_KEYS = (
     text("name", required=True, help="what the antenna is called; no two alike"),
     choice("kind", KINDS, "kind of antenna", required=True, help="one of the kinds of this list"),
     point("position", "east, north", default=(0.0, 0.0), help="of the reference point"),
-    length("height", default=0.0, help="of the reference point above ground"),
+    length("height", DISTANCE, default=0.0, help="of the reference point above ground"),
     angle("bearing", default=0.0, help="clockwise from true north"),
     *MATERIAL_KEYS,
     impedance(

@@ -10,10 +10,10 @@ from exposure.antennas.model import Antenna, Wiring
 from exposure.antennas.resonance import half_wave
 from exposure.keys.kinds import angle, length, number, wire_size
 from exposure.keys.reading import Reading
-from exposure.keys.values import POSITIVE, Range
+from exposure.keys.values import HEIGHT, Range
 
 KEYS = (
-    length("length", POSITIVE, help="of the whole wire; derived from the frequency where only one is used"),
+    length("length", help="of the whole wire; derived from the frequency where only one is used"),
     wire_size(required=True, help="size of the wire"),
     angle(
         "droop",
@@ -21,7 +21,7 @@ KEYS = (
         default=0.0,
         help="both arms below the horizontal (inverted V)",
     ),
-    length("end_height", Range(0), help="instead of droop_deg: height of the two ends"),
+    length("end_height", HEIGHT, help="instead of droop_deg: height of the two ends"),
     number(
         "feed_position",
         allowed=Range(0, 1, low_open=True, high_open=True),

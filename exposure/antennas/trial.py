@@ -5,9 +5,12 @@ from itertools import combinations
 import fieldsolver as fs
 from exposure.antennas.catalogue import structure_wiring, wirings
 from exposure.antennas.model import Antenna, Structure, Wiring
+from fieldsolver.constants import SPEED_OF_LIGHT
 from fieldsolver.problem import problem
 
 ModelError = fs.FieldSolverError  # for rows that do not know the solver
+
+LARGEST = 20_000  # unknowns: the matrix would take 6 GB
 
 _COUNTING = " (wires are counted from 0, along the conductors in the order of the file)"
 
@@ -48,5 +51,18 @@ def _agree(parts, frequency: float, ground) -> bool:
 
 def _try(conductors, feeds, loads, frequency: float, ground):
     """Mesh, joints and clearances are those over perfect ground; stated connections were checked before."""
+    _check_size(conductors, frequency)
     stand_in = ground if ground == fs.FREE_SPACE else fs.PERFECT_GROUND
     problem(conductors, feeds, frequency, stand_in, loads, None)
+
+
+def _check_size(conductors, frequency: float):
+    """At least 40 segments a wavelength and 10 a wire (design, section 6)."""
+    wavelength = SPEED_OF_LIGHT / frequency
+    total = sum(wire.length for wire in conductors)
+    unknowns = max(40 * total / wavelength, 10 * len(conductors))
+    if unknowns > LARGEST:
+        raise fs.GeometryError(
+            f"{total:.4g} m of wire at {frequency / 1e6:g} MHz, {total / wavelength:.4g} wavelengths, would "
+            f"need about {unknowns:.2g} unknowns; at most {LARGEST} can be solved"
+        )

@@ -10,13 +10,13 @@ from exposure.antennas.model import Antenna, Wiring
 from exposure.antennas.resonance import quarter_wave
 from exposure.keys.kinds import angle, integer, length, wire_size
 from exposure.keys.reading import Reading
-from exposure.keys.values import POSITIVE, Range
+from exposure.keys.values import Range
 
 KEYS = (
-    length("length", POSITIVE, help="of the vertical part; a quarter wave where only one frequency is used"),
+    length("length", help="of the vertical part; a quarter wave where only one frequency is used"),
     wire_size(required=True, help="size of the vertical part"),
     integer("radials", Range(0, 120), default=0, help="number of elevated radials"),
-    length("radial_length", POSITIVE, help="of each radial; a quarter wave where only one frequency is used"),
+    length("radial_length", help="of each radial; a quarter wave where only one frequency is used"),
     angle("radial_droop", Range(0, math.radians(85)), default=0.0, help="radials below the horizontal"),
     wire_size("radial_wire_radius", help="size of the radials; as the vertical part unless stated"),
 )

@@ -5,7 +5,7 @@ from collections.abc import Callable, Mapping
 from dataclasses import dataclass
 
 from exposure.keys import values
-from exposure.keys.values import ANY, POSITIVE, Range
+from exposure.keys.values import ANY, DISTANCE, LENGTH, POSITIVE, WIRE_SIZE, Range
 from exposure.units import FOOT, INCH, MINUTE
 
 
@@ -73,7 +73,7 @@ def number(stem: str, names=None, allowed: Range = ANY, **more) -> Key:
     return Key(stem, lambda raw, factor: values.number(raw, factor, allowed), **_named(stem, names), **more)
 
 
-def length(stem: str, allowed: Range = ANY, **more) -> Key:
+def length(stem: str, allowed: Range = LENGTH, **more) -> Key:
     """A length in metres or feet."""
     return number(stem, _lengths(stem), allowed, **more)
 
@@ -88,7 +88,7 @@ def wire_size(stem: str = "wire_radius", **more) -> Key:
         f"{thing}_diameter_in": INCH / 2,
     }
     bases = (f"{thing}_radius", f"{thing}_diameter")
-    return Key(stem, lambda raw, factor: values.number(raw, factor, POSITIVE), names, bases=bases, **more)
+    return Key(stem, lambda raw, factor: values.number(raw, factor, WIRE_SIZE), names, bases=bases, **more)
 
 
 def angle(stem: str, allowed: Range = ANY, **more) -> Key:
@@ -131,7 +131,7 @@ def date(stem: str, **more) -> Key:
     return Key(stem, lambda raw, _: values.date(raw), {stem: 1}, **more)
 
 
-def point(stem: str, axes: str, allowed: Range = ANY, **more) -> Key:
+def point(stem: str, axes: str, allowed: Range = DISTANCE, **more) -> Key:
     """A point in metres or feet; ``axes`` are their names, as "east, north, up"; the range is for up."""
     ranges = _ranges(axes, allowed)
     return Key(
@@ -139,7 +139,7 @@ def point(stem: str, axes: str, allowed: Range = ANY, **more) -> Key:
     )
 
 
-def points(stem: str, axes: str, at_least: int, allowed: Range = ANY, **more) -> Key:
+def points(stem: str, axes: str, at_least: int, allowed: Range = DISTANCE, **more) -> Key:
     """A list of points in metres or feet."""
     ranges = _ranges(axes, allowed)
 
@@ -174,4 +174,4 @@ def _lengths(stem: str) -> dict:
 
 
 def _ranges(axes: str, allowed: Range) -> tuple[Range, ...]:
-    return tuple(allowed if axis == "up" else ANY for axis in axes.split(", "))
+    return tuple(allowed if axis == "up" else DISTANCE for axis in axes.split(", "))

@@ -95,6 +95,8 @@ def _read_inside(reading: Reading, key: SubTable, raw, outside):
             key.stem, f"must be {'tables' if key.many else 'one table'}, written {title}; found {found(raw)}"
         )
         return () if key.many else None
+    if key.required and not tables:
+        reading.wrong(key.stem, f"at least one {title} is needed")
     path = (*reading.path, key.stem)
     inside = []
     for index, table in enumerate(tables):

@@ -38,6 +38,11 @@ class Range:
 
 
 ANY = Range()
+FAR = 1e5  # [m] no place of a station, and no length in it, is farther or longer
+DISTANCE = Range(-FAR, FAR)
+LENGTH = Range(0, FAR, low_open=True)
+HEIGHT = Range(0, FAR)
+WIRE_SIZE = Range(1e-6, 10)  # [m] from a micrometre to a tower
 POSITIVE = Range(0, low_open=True)
 NOT_NEGATIVE = Range(0)
 FRACTION = Range(0, 1)
@@ -74,14 +79,23 @@ def nearest(word: str, known) -> str | None:
 
 
 def number(raw, factor: float, allowed: Range) -> float:
+    """A finite number in its range, times the factor."""
     if isinstance(raw, bool) or not isinstance(raw, int | float):
         hint = f"; write {raw.strip()} without quotes" if isinstance(raw, str) and _is_number(raw) else ""
         raise Refused(f"must be a number; found {found(raw)}{hint}")
-    if not math.isfinite(raw):
-        raise Refused(f"must be a finite number; found {raw}")
-    if not allowed.holds(raw * factor):
+    value = _double(raw)
+    if not math.isfinite(value):
+        raise Refused(f"must be a finite number; found {raw:.6g}")
+    if not allowed.holds(value * factor):
         raise Refused(f"must be {allowed.words(factor)}; found {raw}")
-    return float(raw * factor)
+    return value * factor
+
+
+def _double(raw) -> float:
+    try:
+        return float(raw)
+    except OverflowError:  # a whole number of more than 308 digits
+        raise Refused("must be a smaller number") from None
 
 
 def _is_number(raw: str) -> bool:
@@ -92,20 +106,26 @@ def _is_number(raw: str) -> bool:
 
 
 def integer(raw, allowed: Range) -> int:
+    """A whole number in its range."""
     if isinstance(raw, bool) or not isinstance(raw, int):
         raise Refused(f"must be a whole number; found {found(raw)}")
     return int(number(raw, 1, allowed))
 
 
 def text(raw) -> str:
+    """Words on one line; line breaks and repeated blanks become one blank."""
     if not isinstance(raw, str):
         raise Refused(f"must be a text in quotes; found {found(raw)}")
     if not raw.strip():
         raise Refused("must not be empty")
-    return raw
+    words = " ".join(raw.split())
+    if not words.isprintable():
+        raise Refused("must consist of characters that can be printed")
+    return words
 
 
 def choice(raw, options: tuple, what: str) -> str:
+    """One of the options."""
     word = text(raw)
     if word not in options:
         raise Refused(unknown_word(what, word, options))
@@ -113,6 +133,7 @@ def choice(raw, options: tuple, what: str) -> str:
 
 
 def choices(raw, options: tuple, what: str) -> tuple[str, ...]:
+    """A list of options, none twice."""
     if not isinstance(raw, list) or not raw:
         raise Refused(
             f'must be a list with at least one {what}, such as ["{options[0]}"]; found {found(raw)}'
@@ -128,18 +149,21 @@ def choices(raw, options: tuple, what: str) -> tuple[str, ...]:
 
 
 def boolean(raw) -> bool:
+    """True or False."""
     if not isinstance(raw, bool):
         raise Refused(f"must be true or false; found {found(raw)}")
     return raw
 
 
 def date(raw) -> datetime.date:
+    """A day."""
     if isinstance(raw, datetime.datetime) or not isinstance(raw, datetime.date):
         raise Refused(f"must be a day written as 2026-12-01, without quotes or time; found {found(raw)}")
     return raw
 
 
 def point(raw, factor: float, axes: str, ranges: tuple[Range, ...]) -> tuple[float, ...]:
+    """A point; each axis in its range."""
     if not isinstance(raw, list) or len(raw) != len(ranges):
         raise Refused(f"must be a point of {len(ranges)} numbers, [{axes}]; found {found(raw)}")
     values = []
@@ -152,6 +176,7 @@ def point(raw, factor: float, axes: str, ranges: tuple[Range, ...]) -> tuple[flo
 
 
 def points(raw, factor: float, axes: str, ranges, at_least: int) -> tuple[tuple[float, ...], ...]:
+    """A list of points."""
     if not isinstance(raw, list) or len(raw) < at_least:
         raise Refused(f"must be a list of at least {at_least} points [{axes}]; found {found(raw)}")
     values = []
@@ -164,6 +189,7 @@ def points(raw, factor: float, axes: str, ranges, at_least: int) -> tuple[tuple[
 
 
 def impedance(raw) -> complex:
+    """Ohms."""
     parts = raw if isinstance(raw, list) else [raw, 0.0]
     if len(parts) != 2:
         raise Refused(f"must be ohms, a number or [resistance, reactance]; found {found(raw)}")

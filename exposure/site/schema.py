@@ -18,7 +18,7 @@ from exposure.keys.kinds import (
     text,
     wire_size,
 )
-from exposure.keys.values import FRACTION, NOT_NEGATIVE, POSITIVE, Range
+from exposure.keys.values import DISTANCE, FRACTION, HEIGHT, NOT_NEGATIVE, POSITIVE, Range
 from exposure.limits import DOCUMENTS
 from exposure.published.cables import CABLES
 from exposure.published.modes import MODES
@@ -81,7 +81,7 @@ LINE_KEYS = (
         help="from the transmitter to the antenna, as measured or known",
     ),
     choice("cable", CABLES, "cable", help="instead of loss_db: the lowest published attenuation is credited"),
-    length("length", POSITIVE, help="of the cable"),
+    length("length", help="of the cable"),
 )
 TRANSMISSION_KEYS = (
     text("name", required=True, help="what the emission is called; no two alike"),
@@ -89,7 +89,7 @@ TRANSMISSION_KEYS = (
     number(
         "frequency",
         {"frequency_mhz": 1e6},
-        Range(0, 300e9, low_open=True),
+        Range(1e3, 300e9),
         required=True,
         help="of the carrier",
     ),
@@ -126,11 +126,11 @@ AREA_KEYS = (
     ),
     text("informed", help="who was informed and when; an occupational area needs it"),
     points("corners", "east, north", 3, help="outline in plan, with bottom and top"),
-    point("point", "east, north, up", NOT_NEGATIVE, help="instead of corners: a single point"),
+    point("point", "east, north, up", HEIGHT, help="instead of corners: a single point"),
     points("path", "east, north", 2, help="instead of corners: a centre line, with width"),
-    length("width", POSITIVE, help="of a path"),
-    length("bottom", help="above ground; of a path 0 unless stated"),
-    length("top", help="above ground; of a path 2 m above its bottom unless stated"),
+    length("width", help="of a path"),
+    length("bottom", DISTANCE, help="above ground; of a path 0 unless stated"),
+    length("top", DISTANCE, help="above ground; of a path 2 m above its bottom unless stated"),
     boolean("insulated_floor", default=False, help="true where people stand on an insulated floor"),
 )
 TOP_KEYS = (

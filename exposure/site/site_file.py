@@ -135,7 +135,7 @@ def _check_models(reading: Reading, antennas, structures, emissions, around: Gro
     for table, owner in zip(tables, (*antennas, *structures), strict=True):
         if owner is None or not table.sound:
             continue
-        frequency = (*_frequencies(owner, emissions), _ANY_FREQUENCY)[0]
+        frequency = max(_frequencies(owner, emissions), default=_ANY_FREQUENCY)
         message = trial.objection(owner, frequency, solver_ground)
         if message:
             table.wrong("kind" if table.has("kind") else "points", message)

@@ -68,7 +68,8 @@ def _lines(summary: dict):
     for emission in summary["transmissions"]:
         yield (
             f"transmission '{emission['name']}': {emission['frequency_hz'] / 1e6:g} MHz on "
-            f"'{emission['antenna']}', {emission['power']}; duty factor {figures(emission['duty_factor'])} ({emission['duty_source']})"
+            f"'{emission['antenna']}', {emission['power']}; "
+            f"duty factor {figures(emission['duty_factor'])} ({emission['duty_source']})"
         )
     yield from (f"area '{area['name']}': {area['population']}" for area in summary["areas"])
     yield from (f"caution: {caution}" for caution in summary["cautions"])

@@ -320,6 +320,32 @@ CASES = [
         ),
     ),
     case(
+        "no conductor",
+        LAST,
+        LAST
+        + changed(
+            "[[antenna.conductor]]\npoints_m = [[0, 0, 5], [0, 3, 8], [0, 6, 5]]\nwire_radius_mm = 1.5\n",
+            "conductor = [] #! antenna 2.conductor: at least one [[antenna.conductor]]\n",
+            DRAWN,
+        ),
+    ),
+    case(
+        "farther than a station reaches",
+        "position_m = [0, 0]",
+        "position_m = [0, 1e6] #! antenna 1.position_m: north must be at least -100000 and at most 100000",
+    ),
+    case(
+        "more wavelengths than can be solved",
+        'kind = "dipole"\nposition_m = [0, 0]\nheight_m = 9.1\nbearing_deg = 90\nlength_m = 10.1',
+        'kind = "dipole" #! antenna 1.kind: wavelengths | at most 20000\n'
+        "position_m = [0, 0]\nheight_m = 9.1\nbearing_deg = 90\nlength_m = 50000",
+    ),
+    case(
+        "a whole number beyond counting",
+        "14.2",
+        "1" + "0" * 400 + " #! transmission 1.frequency_mhz: smaller",
+    ),
+    case(
         "one point",
         LAST,
         LAST
@@ -358,7 +384,7 @@ CASES = [
         'antenna = "garden dipole"',
         'antenna = "garden dipol" #! transmission 1.antenna: did you mean garden dipole',
     ),
-    case("frequency zero", "14.2", "0 #! transmission 1.frequency_mhz: more than 0 | found 0"),
+    case("frequency zero", "14.2", "0 #! transmission 1.frequency_mhz: at least 0.001 | found 0"),
     case(
         "frequency without unit",
         "frequency_mhz",
