@@ -90,6 +90,13 @@ def ground_loads(
     return tuple(fs.Load(index, position, impedance=connection) for index, position in ends if real)
 
 
+def ideal_ground_note(name: str, *connections: complex | None) -> tuple[str, ...]:
+    """The note for the report where a connection to real ground is stated as 0 ohm."""
+    if any(connection == 0 for connection in connections):
+        return (f"the connection of {name} to the ground is stated as 0 ohm: ideal",)
+    return ()
+
+
 def stands_on_ground(point, radius: float) -> bool:
     """Whether an end at this point is on the ground. [m]"""
     return abs(point[2]) < TOUCHES * radius

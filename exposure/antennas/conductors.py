@@ -4,7 +4,14 @@ import cmath
 from dataclasses import dataclass, replace
 
 import fieldsolver as fs
-from exposure.antennas.chains import ground_loads, place_on, placed, stands_on_ground, wires
+from exposure.antennas.chains import (
+    ground_loads,
+    ideal_ground_note,
+    place_on,
+    placed,
+    stands_on_ground,
+    wires,
+)
 from exposure.antennas.feed_line import with_feed_line
 from exposure.antennas.materials import MATERIAL_KEYS, material
 from exposure.antennas.model import Antenna, Material, Wiring
@@ -171,9 +178,12 @@ def _solver_load(load: ChainLoad, drawn, first) -> fs.Load:
 
 
 def _notes(antenna: Antenna) -> tuple[str, ...]:
+    connections = (chain.ground_connection for chain in antenna.shape.chains)
+    notes = ideal_ground_note(f"antenna '{antenna.name}'", antenna.ground_connection, *connections)
     if antenna.feed_line is not None:
-        return ()
+        return notes
     return (
+        *notes,
         "the outside of the feed line is not modelled: where the antenna is not balanced about its feed, or "
         "no choke is fitted, fields near the feed line are not assessed",
     )

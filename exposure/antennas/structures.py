@@ -1,6 +1,6 @@
 """Passive metal near an antenna: masts, guys, fences, gutters."""
 
-from exposure.antennas.chains import ground_loads, wires
+from exposure.antennas.chains import ground_loads, ideal_ground_note, wires
 from exposure.antennas.model import Structure, Wiring
 
 
@@ -12,6 +12,7 @@ def structure_wiring(structure: Structure, ground) -> Wiring:
     fieldsolver.GeometryError
         As ``chains.ground_loads``, and what the thin-wire model cannot represent.
     """
+    name = f"structure '{structure.name}'"
     chain = wires(structure.points, structure.wire_radius, structure.material)
-    loads = ground_loads(chain, ground, structure.ground_connection, f"structure '{structure.name}'")
-    return Wiring(chain, (), loads)
+    loads = ground_loads(chain, ground, structure.ground_connection, name)
+    return Wiring(chain, (), loads, notes=ideal_ground_note(name, structure.ground_connection))

@@ -4,7 +4,7 @@ import math
 from dataclasses import dataclass, replace
 
 import fieldsolver as fs
-from exposure.antennas.chains import ground_loads, placed, stands_on_ground, wires
+from exposure.antennas.chains import ground_loads, ideal_ground_note, placed, stands_on_ground, wires
 from exposure.antennas.feed_line import with_feed_line
 from exposure.antennas.model import Antenna, Wiring
 from exposure.antennas.resonance import quarter_wave
@@ -120,6 +120,4 @@ def _notes(antenna: Antenna) -> tuple[str, ...]:
             "a vertical drives current on the outside of its feed line, which the site file does not "
             "describe: fields near the feed line are not assessed",
         )
-    if antenna.ground_connection == 0:
-        notes += ("its connection to the ground is stated as 0 ohm: ideal",)
-    return notes
+    return notes + ideal_ground_note(f"antenna '{antenna.name}'", antenna.ground_connection)

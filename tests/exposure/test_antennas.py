@@ -240,6 +240,21 @@ def test_a_structure_is_a_chain_with_its_connection_to_real_ground():
     assert wiring.loads == (fs.Load(0, 0.0, impedance=100 + 0j),) and wiring.feeds == ()
 
 
+@pytest.mark.parametrize("connection", [0j, 5 + 0j])
+def test_a_connection_of_nothing_is_said_to_be_ideal(connection):
+    chain = Chain(((0.0, 0.0, 0.0), (0.0, 0.0, 5.0)), 1e-3)
+    drawn = replace(DRAWN, height=0.0, shape=Conductors((chain,), (ChainFeed(0, 0.0),)))
+    post = Structure("post", ((1.0, 2.0, 0.0), (1.0, 2.0, 3.0)), 0.01, COPPER, connection)
+
+    found = [
+        one(replace(drawn, ground_connection=connection), REAL),
+        one(replace(MONOPOLE, ground_connection=connection), REAL),
+        structure_wiring(post, REAL),
+    ]
+
+    assert [any("ideal" in note for note in wiring.notes) for wiring in found] == [connection == 0] * 3
+
+
 def test_a_structure_on_perfect_ground_needs_no_connection():
     post = Structure("post", ((1.0, 2.0, 0.0), (1.0, 2.0, 3.0)), 0.01, COPPER)
 
