@@ -3,6 +3,7 @@
 import os
 import shutil
 import tempfile
+from contextlib import contextmanager
 from dataclasses import asdict
 from pathlib import Path
 
@@ -23,11 +24,12 @@ def run(arguments) -> int:
     """Assess, write the files, print the verdict; its exit code."""
     site = read_site(arguments.site)
     directory = Path(arguments.output or Path("results") / Path(arguments.site).stem)
-    try:
-        assessment = assess(site, progress=progress)
-    except ModelError as error:
-        raise ExposureError(f"{site.file} cannot be modelled: {error}") from None
-    _write(assessment, directory)
+    with _fresh(directory) as fresh:
+        assessment = _assessment(site)
+        _write(assessment, fresh)
+        directory.mkdir(exist_ok=True)
+        for name in FILES:
+            _move(fresh / name, directory / name)
     if arguments.json:
         print_json(_summary(assessment, directory))
     else:
@@ -35,21 +37,32 @@ def run(arguments) -> int:
     return EXIT_CODES[assessment.verdict]
 
 
-def _write(assessment, directory: Path):
-    """All files in a new directory beside, then moved; a failure leaves what was there before."""
+def _assessment(site):
+    try:
+        return assess(site, progress=progress)
+    except ModelError as error:
+        raise ExposureError(f"{site.file} cannot be modelled: {error}") from None
+
+
+@contextmanager
+def _fresh(directory: Path):
+    """A new directory beside the one for results, made before the long work begins, gone afterwards."""
+    if directory.exists() and not directory.is_dir():
+        raise ExposureError(f"results go into a directory, but {directory} is a file")
     directory.parent.mkdir(parents=True, exist_ok=True)
     fresh = Path(tempfile.mkdtemp(prefix=f".{directory.name}-", dir=directory.parent))
     try:
-        write_result(assessment, fresh / "assessment.json")
-        if assessment.site.place_deg is not None:
-            write_geojson(assessment, fresh / "boundaries.geojson")
-        write_figures(assessment, fresh / "figures")
-        write_report(assessment, fresh / "report.pdf")
-        directory.mkdir(exist_ok=True)
-        for name in FILES:
-            _move(fresh / name, directory / name)
+        yield fresh
     finally:
         shutil.rmtree(fresh, ignore_errors=True)
+
+
+def _write(assessment, directory: Path):
+    write_result(assessment, directory / "assessment.json")
+    if assessment.site.place_deg is not None:
+        write_geojson(assessment, directory / "boundaries.geojson")
+    write_figures(assessment, directory / "figures")
+    write_report(assessment, directory / "report.pdf")
 
 
 def _move(new: Path, old: Path):
