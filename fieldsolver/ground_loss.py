@@ -15,7 +15,7 @@ replaced by the stated ground connection, a load, and left out here as in the ma
 import numpy as np
 from scipy.special import j0
 
-from fieldsolver.constants import EPSILON_0, MU_0
+from fieldsolver.constants import EPSILON_0, FREE_SPACE_IMPEDANCE, MU_0
 from fieldsolver.ground import LossyGround
 from fieldsolver.kernels import gauss
 
@@ -28,20 +28,12 @@ def ground_loss(problem, ends: np.ndarray) -> float:
     if not isinstance(problem.ground, LossyGround):
         return 0.0
     permittivity = problem.ground.complex_permittivity(problem.angular_frequency)
-    contacts = _contacts(problem, ends)
-    return sum(
+    contacts = problem.ground_ends.points[:, :2], -(problem.ground_ends.slopes @ ends), problem.ground_ends
+    flux = sum(
         _panel(problem, ends, permittivity, contacts, wavenumber, weight)
         for wavenumber, weight in _panels(problem, permittivity, contacts)
     )
-
-
-def _contacts(problem, ends):
-    """Ends on the ground: plan position (n, 2) [m], current into it (n,) [A], radius (n,) [m]."""
-    mesh = problem.mesh
-    segment, side = np.nonzero(mesh.grounded[mesh.nodes])
-    point = np.where(side[:, None] == 0, mesh.start[segment], mesh.end[segment])
-    inward = np.where(side == 0, -1.0, 1.0)
-    return point[:, :2], inward * ends[2 * segment + side], mesh.radius[segment]
+    return flux + _replaced(problem, ends, permittivity)
 
 
 def _panels(problem, permittivity, contacts):
@@ -49,7 +41,7 @@ def _panels(problem, permittivity, contacts):
     k, mesh = problem.k, problem.mesh
     extent = float(np.linalg.norm(np.ptp(np.concatenate([mesh.start, mesh.end]), axis=0)))
     lowest = float(min(mesh.start[:, 2].min(), mesh.end[:, 2].min()))
-    last = 40 / contacts[2].min() if len(contacts[2]) else DECAY / lowest + 2 * k
+    last = 40 / contacts[2].radius.min() if len(contacts[0]) else DECAY / lowest + 2 * k
     t, w = gauss(24 + int(k * extent))
     yield k * np.sin(np.pi / 2 * t), w * np.pi / 2 * k * np.cos(np.pi / 2 * t)
     inner = abs(np.sqrt(permittivity)) * k
@@ -105,7 +97,7 @@ def _panel(problem, ends, permittivity, contacts, wavenumber, weight) -> float:
         admittance_across = (u1 / (1j * omega * MU_0)).real
         admittance_along = (1j * omega * EPSILON_0 * permittivity / u1).real
         density = np.abs(e_across) ** 2 * admittance_across
-        density += _density(e_along, lift / u0, l, alpha, contacts) * admittance_along
+        density += _density(e_along, lift / u1, l, alpha, contacts) * admittance_along
         total += float(weight[i : i + step] @ (density.mean(axis=1) * l[:, 0])) / (2 * np.pi)
     return total - _static_self(problem, permittivity, contacts) * float(weight.sum())
 
@@ -138,15 +130,26 @@ def _hat_transforms(p):
 
 
 def _density(e_along, per_end, l, alpha, contacts):
-    """|E_along|^2 with the charge of an end on the ground seen by the rest as a ring, J0(l a)."""
-    position, current, radius = contacts
+    """|E_along|^2 with the charge of an end on the ground seen by the rest as a ring, J0(l a).
+
+    per_end : surface field of that charge for one ampere, l/(w eps0 (ec u0 + u1)).
+    """
+    position, current, ends = contacts
     if not len(current):
         return np.abs(e_along) ** 2
     direction = np.stack([np.cos(alpha), np.sin(alpha)])
-    ends = [per_end * i * np.exp(1j * l * (xy @ direction)) for xy, i in zip(position, current, strict=True)]
-    rings = [j0(l * a) * end for a, end in zip(radius, ends, strict=True)]
-    density = np.abs(e_along - sum(ends) + sum(rings)) ** 2
-    return density + sum(np.abs(end) ** 2 - np.abs(ring) ** 2 for end, ring in zip(ends, rings, strict=True))
+    own = [per_end * i * np.exp(1j * l * (xy @ direction)) for xy, i in zip(position, current, strict=True)]
+    rings = [j0(l * radius) * end for radius, end in zip(ends.radius, own, strict=True)]
+    density = np.abs(e_along - sum(own) + sum(rings)) ** 2
+    return density + sum(np.abs(end) ** 2 - np.abs(ring) ** 2 for end, ring in zip(own, rings, strict=True))
+
+
+def _replaced(problem, ends, permittivity) -> float:
+    """Power that the stated connections change between ends on the ground and wires. [W]"""
+    at = problem.ground_ends
+    both = 2 * ((at.slopes @ ends).conj() @ (at.replaced @ ends)).real
+    impedance = -1j * FREE_SPACE_IMPEDANCE / (4 * np.pi * problem.k) * 2 / (permittivity + 1)
+    return float(impedance.real * both)
 
 
 def _static_self(problem, permittivity, contacts) -> float:

@@ -13,9 +13,9 @@ from scipy import sparse
 
 from fieldsolver.constants import FREE_SPACE_IMPEDANCE, SPEED_OF_LIGHT
 from fieldsolver.ground import LossyGround
+from fieldsolver.ground_ends import GroundEnds
 from fieldsolver.images import Image, image
-from fieldsolver.kernels import line_potential
-from fieldsolver.pieces import ground_ends, pieces
+from fieldsolver.pieces import pieces
 from fieldsolver.reflection import Reflection
 
 PAIRS = 1 << 16
@@ -29,25 +29,26 @@ class HalfSpace:
     image: Image
     reflection: Reflection
 
-    def matrix(self, mesh, basis: sparse.csr_matrix) -> np.ndarray:
+    def matrix(self, mesh, basis: sparse.csr_matrix, ends: GroundEnds) -> np.ndarray:
         """(N, N) part of the impedance matrix over j k eta/4 pi."""
         few = pieces(mesh, self.k)
         count = len(few.points)
         vector, scalar = np.zeros((count, count), complex), np.zeros((count, count), complex)
-        least = float(mesh.radius.min())
         i, j = np.triu_indices(count)
         for low in range(0, len(i), PAIRS):
             part = i[low : low + PAIRS], j[low : low + PAIRS]
-            vector[part], scalar[part] = self._interactions(few, *part, least)
+            vector[part], scalar[part] = self._interactions(few, *part)
         for values in (vector, scalar):
             values[j, i] = values[i, j]
         moment, slope = (few.moment @ basis).tocsr(), (few.slope @ basis).tocsr()
         out = moment.T @ (moment.T @ vector).T - slope.T @ (slope.T @ scalar).T / self.k**2
-        return out - self._ground_ends(mesh, basis) / self.k**2
+        if len(ends.points):
+            out -= self._of_ends(basis, few, slope, ends) / self.k**2
+        return out
 
-    def _interactions(self, few, i, j, least):
+    def _interactions(self, few, i, j):
         """t . K t' and K_phi for pairs of points, the image's share taken out. [1/m]"""
-        rho, zeta, unit = _cylinder(few.points[i], few.points[j], least)
+        rho, zeta, unit = _cylinder(few.points[i], few.points[j])
         rest = self.reflection.potentials(rho, zeta)
         test, source = few.tangents[i], few.tangents[j]
         vector = rest["k_xx"] * (test[:, :2] * source[:, :2]).sum(axis=1)
@@ -57,51 +58,45 @@ class HalfSpace:
         vector -= slope * (source[:, 2] * (test[:, :2] * unit).sum(axis=1))
         return vector, rest["k_phi"]
 
-    def _ground_ends(self, mesh, basis):
-        """Charges of ends on the ground with all other charges, direct and image together.
+    def _of_ends(self, basis, few, slope, ends):
+        """Charges of ends on the ground with all charges: direct and image together, and the rest."""
+        count = len(ends.points)
+        both = 1 + self.image.charge
+        here = (ends.slopes @ basis).toarray()
+        potential = both * ((ends.potentials + ends.replaced) @ basis)
+        rho, zeta, _ = _cylinder(
+            np.repeat(ends.points, len(few.points), axis=0), np.tile(few.points, (count, 1))
+        )
+        rest = self.reflection.potentials(rho, zeta)["k_phi"].reshape(count, -1)
+        between = here.T @ (potential + (slope.T @ rest.T).T)
+        return between + between.T + here.T @ self._mutual(ends, both) @ here
 
-        A ring charge of the wire's radius is as far from the tube above it as from a line one
-        radius away.  The static potential of an end on itself is left out: the stated ground
-        connection stands for it.
-        """
-        points, ends = ground_ends(mesh)
-        if not len(points):
-            return 0.0
-        count, segments = len(points), mesh.count
-        own = np.array([(mesh.start == p).all(axis=1) | (mesh.end == p).all(axis=1) for p in points])
-        potential = line_potential(
-            self.k,
-            np.repeat(points, segments, axis=0),
-            np.tile(mesh.start, (count, 1)),
-            np.tile(mesh.end - mesh.start, (count, 1)),
-            (own * mesh.radius**2).reshape(-1),
-        ).reshape(count, segments)
-        across = sparse.csr_matrix(np.kron(potential / mesh.length, np.array([[-1.0, 1.0]]))) @ basis
-        distance = np.linalg.norm(points[:, None] - points[None], axis=2) + np.eye(count)
-        mutual = np.exp(-1j * self.k * distance) / distance
-        np.fill_diagonal(mutual, -1j * self.k)
-        here = ends @ basis
-        between = (here.T @ across).toarray()
-        return (1 + self.image.charge) * (between + between.T + here.T @ (here.T @ mutual).T)
+    def _mutual(self, ends, both):
+        """(n, n) potentials of the ends on each other; on themselves without the static part. [1/m]"""
+        distance = np.linalg.norm(ends.points[:, None] - ends.points[None], axis=2)
+        alone = np.eye(len(distance), dtype=bool)
+        distance = np.where(alone, ends.radius, distance)
+        wave = np.where(alone, -1j * self.k, np.exp(-1j * self.k * distance) / distance)
+        flat = distance.reshape(-1)
+        rest = self.reflection.potentials(flat, 0 * flat)["k_phi"]
+        return both * wave + rest.reshape(distance.shape)
 
-    def fields(self, mesh, ends, points):
-        """E (n, 3) [V/m] and H (n, 3) [A/m] of the rest at points (n, 3)."""
+    def fields(self, mesh, ends, points, ground: GroundEnds):
+        """E (n, 3) [V/m] and H (n, 3) [A/m] of the rest at points (n, 3), for end currents (2S,)."""
         few = pieces(mesh, self.k)
         moment = (few.moment @ ends)[:, None] * few.tangents
-        slope = few.slope @ ends
-        least = float(mesh.radius.min())
-        rows = max(1, PAIRS // len(few.points))
+        sources = np.concatenate([few.points, ground.points])
+        moment = np.concatenate([moment, np.zeros_like(ground.points)])
+        slope = np.concatenate([few.slope @ ends, ground.slopes @ ends])
+        rows = max(1, PAIRS // len(sources))
         parts = [
-            self._fields(points[i : i + rows], few.points, moment, slope, least)
-            for i in range(0, len(points), rows)
+            self._fields(points[i : i + rows], sources, moment, slope) for i in range(0, len(points), rows)
         ]
         return tuple(np.concatenate(fields) for fields in zip(*parts, strict=True))
 
-    def _fields(self, points, sources, moment, slope, least):
+    def _fields(self, points, sources, moment, slope):
         shape = (len(points), len(sources))
-        rho, zeta, unit = _cylinder(
-            np.repeat(points, shape[1], axis=0), np.tile(sources, (shape[0], 1)), least
-        )
+        rho, zeta, unit = _cylinder(np.repeat(points, shape[1], axis=0), np.tile(sources, (shape[0], 1)))
         rest = {name: values.reshape(shape) for name, values in self.reflection.fields(rho, zeta).items()}
         x, y = unit[:, 0].reshape(shape), unit[:, 1].reshape(shape)
         f_over_rho = rest["f_rho_over_rho"]
@@ -133,9 +128,9 @@ def half_space(ground, angular_frequency: float) -> HalfSpace | None:
     return HalfSpace(k, image(ground, angular_frequency), reflection)
 
 
-def _cylinder(points, sources, least):
-    """Horizontal distance (at least ``least``), sum of heights, and unit vector in plan (0 above)."""
+def _cylinder(points, sources):
+    """Horizontal distance, sum of heights, and unit vector in plan (0 where there is none)."""
     across = points[:, :2] - sources[:, :2]
     rho = np.hypot(across[:, 0], across[:, 1])
     unit = across / np.maximum(rho, 1e-300)[:, None]
-    return np.maximum(rho, least), points[:, 2] + sources[:, 2], unit
+    return rho, points[:, 2] + sources[:, 2], unit

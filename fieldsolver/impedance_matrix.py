@@ -29,7 +29,7 @@ def impedance_matrix(problem) -> np.ndarray:
     half *= factor
     half += half.T.copy()
     if problem.half_space is not None:
-        half += factor * problem.half_space.matrix(mesh, basis)
+        half += factor * problem.half_space.matrix(mesh, basis, problem.ground_ends)
     rows = problem.load_rows @ basis
     lumped = rows.T @ sparse.diags(problem.load_impedances) @ rows + basis.T @ problem.skin @ basis
     half += lumped.toarray()

@@ -15,7 +15,6 @@ from fieldsolver.errors import PointError
 from fieldsolver.ground import FreeSpace
 from fieldsolver.images import MIRROR
 from fieldsolver.kernels import gauss
-from fieldsolver.pieces import ground_ends
 from fieldsolver.radiation import Elements, fields_of_elements
 
 RADII = 3.0
@@ -58,7 +57,7 @@ def near_field(currents, points) -> Field:
         parts.append(_fields(problem.k, points, wires.mirrored(problem.image)))
     if problem.half_space is not None:
         parts.append(_ground_ends(problem, points, currents.ends))
-        parts.append(problem.half_space.fields(problem.mesh, currents.ends, points))
+        parts.append(problem.half_space.fields(problem.mesh, currents.ends, points, problem.ground_ends))
     return Field(*(sum(fields) for fields in zip(*parts, strict=True)))
 
 
@@ -150,9 +149,9 @@ def _fields(k, points, source: _Source):
 
 def _ground_ends(problem, points, ends):
     """Fields of the charges where wires end on real ground, with their images."""
-    at, rows = ground_ends(problem.mesh)
+    at = problem.ground_ends.points
+    slopes = (1 + problem.image.charge) * (problem.ground_ends.slopes @ ends)
     nothing = np.zeros((len(at), 3))
-    slopes = (1 + problem.image.charge) * (rows @ ends)
     return fields_of_elements(problem.k, points, Elements(at, nothing, nothing, slopes))
 
 

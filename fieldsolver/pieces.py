@@ -22,8 +22,7 @@ PER_WAVELENGTH = 6.0
 class Pieces:
     """Points (n, 3) [m] with unit tangents (n, 3), and what sits there as matrices of end currents.
 
-    moment (n, 2S): I dl [m]; slope (n, 2S): dI/ds dl [1], with a row for each end on the ground
-    whose current stops there.
+    moment (n, 2S): I dl [m]; slope (n, 2S): dI/ds dl [1].
     """
 
     points: np.ndarray
@@ -38,22 +37,7 @@ def pieces(mesh: Mesh, k: float) -> Pieces:
     parts = [_piece(mesh, low, high) for low, high in runs]
     points, tangents = (np.concatenate([part[i] for part in parts]) for i in (0, 1))
     moment, slope = (sparse.vstack([part[i] for part in parts], format="csr") for i in (2, 3))
-    end_points, end_slopes = ground_ends(mesh)
-    return Pieces(
-        np.concatenate([points, end_points]),
-        np.concatenate([tangents, np.zeros_like(end_points)]),
-        sparse.vstack([moment, sparse.csr_matrix(end_slopes.shape)], format="csr"),
-        sparse.vstack([slope, end_slopes], format="csr"),
-    )
-
-
-def ground_ends(mesh: Mesh):
-    """Points (n, 3) where wires end on the ground, and rows (n, 2S) of dI/ds dl there: -I into it."""
-    segment, side = np.nonzero(mesh.grounded[mesh.nodes])
-    point = np.where(side[:, None] == 0, mesh.start[segment], mesh.end[segment])
-    value = np.where(side == 0, 1.0, -1.0)
-    rows = (value, (np.arange(len(segment)), 2 * segment + side))
-    return point, sparse.csr_matrix(rows, shape=(len(segment), 2 * mesh.count))
+    return Pieces(points, tangents, moment, slope)
 
 
 def _range(mesh, wire):

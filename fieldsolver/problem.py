@@ -9,6 +9,7 @@ from fieldsolver.basis import basis, ends_at_node
 from fieldsolver.constants import SPEED_OF_LIGHT
 from fieldsolver.errors import GeometryError
 from fieldsolver.ground import LossyGround
+from fieldsolver.ground_ends import GroundEnds, ground_ends
 from fieldsolver.half_space import HalfSpace, half_space
 from fieldsolver.images import Image, image
 from fieldsolver.loading import skin_effect
@@ -22,7 +23,7 @@ class Problem:
     mesh, basis B (2S, N); skin (2S, 2S) internal impedance between segment ends [ohm];
     feed_rows (F, 2S) and load_rows (L, 2S) pick the current through a feed or load from the end
     currents; load_impedances (L,) [ohm]; image: closed-form part of the ground, None in free space;
-    half_space: the rest of a real ground, None elsewhere.
+    half_space and ground_ends: the rest of a real ground and what ends on it, None elsewhere.
     """
 
     frequency: float
@@ -35,6 +36,7 @@ class Problem:
     load_impedances: np.ndarray
     image: Image | None
     half_space: HalfSpace | None
+    ground_ends: GroundEnds | None
 
     @property
     def angular_frequency(self) -> float:
@@ -63,6 +65,8 @@ def problem(conductors, feeds, frequency, ground, loads, segments_per_wavelength
     load_ends = [_end(grid, load, "load") for load in loads]
     if isinstance(ground, LossyGround):
         _check_connections(grid, load_ends)
+    load_rows = _rows(grid, load_ends)
+    impedances = np.array([load.at(omega) for load in loads], dtype=complex)
     return Problem(
         frequency=frequency,
         ground=ground,
@@ -70,11 +74,19 @@ def problem(conductors, feeds, frequency, ground, loads, segments_per_wavelength
         basis=basis(grid),
         skin=skin_effect(conductors, grid, omega),
         feed_rows=_rows(grid, [_end(grid, feed, "feed") for feed in feeds]),
-        load_rows=_rows(grid, load_ends),
-        load_impedances=np.array([load.at(omega) for load in loads], dtype=complex),
+        load_rows=load_rows,
+        load_impedances=impedances,
         image=image(ground, omega),
         half_space=half_space(ground, omega),
+        ground_ends=_ground_ends(grid, load_rows, impedances, ground, omega),
     )
+
+
+def _ground_ends(grid, load_rows, impedances, ground, omega) -> GroundEnds | None:
+    if not isinstance(ground, LossyGround):
+        return None
+    permittivity = ground.complex_permittivity(omega)
+    return ground_ends(grid, load_rows, impedances, permittivity, omega / SPEED_OF_LIGHT, omega)
 
 
 def _end(grid: Mesh, item, what: str) -> tuple[int, int]:

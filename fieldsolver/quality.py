@@ -6,6 +6,7 @@ import numpy as np
 from scipy import sparse
 
 from fieldsolver.basis import basis, unknowns
+from fieldsolver.ground_ends import ground_ends
 from fieldsolver.impedance_matrix import impedance_matrix
 from fieldsolver.segments import Mesh
 
@@ -55,6 +56,19 @@ def _halved(problem):
         skin=sparse.kron(z, np.array([[1 / 3, 1 / 6], [1 / 6, 1 / 3]]), format="csr"),
         feed_rows=problem.feed_rows @ pick,
         load_rows=problem.load_rows @ pick,
+        ground_ends=None if problem.ground_ends is None else _ground_ends(problem, mesh, pick),
+    )
+
+
+def _ground_ends(problem, mesh, pick):
+    permittivity = problem.ground.complex_permittivity(problem.angular_frequency)
+    return ground_ends(
+        mesh,
+        problem.load_rows @ pick,
+        problem.load_impedances,
+        permittivity,
+        problem.k,
+        problem.angular_frequency,
     )
 
 

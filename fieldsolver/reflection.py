@@ -6,9 +6,11 @@ half a wavelength and stay so.  Panels are integrated (``spectrum``) when first 
 """
 
 from dataclasses import dataclass, field
+from functools import cached_property
 
 import numpy as np
 
+from fieldsolver.kernels import phasor
 from fieldsolver.spectrum import FIELDS, POTENTIALS, integrals
 
 ORDER = 8
@@ -57,7 +59,7 @@ class Reflection:
             points = order[low:high]
             panel = self._panel(names, int(row[points[0]]), int(column[points[0]]))
             found[:, points] = _evaluate(panel, u[points], v[points])
-        return self._restored(names, found, rho, zeta)
+        return self._restored(names, found, inside, rho, zeta)
 
     def _grid(self) -> "_Grid":
         smallest = SMALLEST / (abs(np.sqrt(self.permittivity)) * self.k)
@@ -85,16 +87,36 @@ class Reflection:
             values[i] -= share.get(name, 0.0)
         return _TO_COEFFICIENTS @ values @ _TO_COEFFICIENTS.T
 
-    def _restored(self, names, found, rho, zeta) -> dict:
-        distance = np.hypot(rho, zeta)
-        wave = np.exp(-1j * self.k * distance) / distance
-        kept = {"f_rho_over_rho", "laplacian_f"}
-        share = _quasi_static(self.kappa, self.k, rho, zeta, distance)
+    def _restored(self, names, found, inside, rho, zeta) -> dict:
+        """Undoes the normalisation, and puts F's closed form back, at the true distance."""
+        rest, closed = _Wave(self.k, inside, zeta), _Wave(self.k, rho, zeta)
+        share = _quasi_static(self.kappa, self.k, rho, zeta, closed.distance)
         result = {}
         for name, values in zip(names, found, strict=True):
-            values = values + share[name] if name in kept else values
-            result[name] = values * (wave if name in ("k_xx", "k_phi", "k_zz") else wave / distance)
+            result[name] = values * rest.scale(name)
+            if name in ("f_rho_over_rho", "laplacian_f"):
+                result[name] += share[name] * closed.scale(name)
         return result
+
+
+@dataclass(frozen=True)
+class _Wave:
+    """e^{-jkR1}/R1 and e^{-jkR1}/R1^2, what tables are over."""
+
+    k: float
+    rho: np.ndarray
+    zeta: np.ndarray
+
+    @cached_property
+    def distance(self):
+        return np.hypot(self.rho, self.zeta)
+
+    @cached_property
+    def wave(self):
+        return phasor(self.k * self.distance) / self.distance
+
+    def scale(self, name):
+        return self.wave if name in ("k_xx", "k_phi", "k_zz") else self.wave / self.distance
 
 
 def _quasi_static(kappa, k, rho, zeta, distance) -> dict:
