@@ -18,7 +18,7 @@ from fieldsolver.images import Image, image
 from fieldsolver.pieces import pieces
 from fieldsolver.reflection import Reflection
 
-PAIRS = 1 << 16
+PAIRS = 1 << 15
 
 
 @dataclass(frozen=True)

@@ -73,7 +73,7 @@ class Reflection:
         return self._panels[key]
 
     def _integrated(self, names, row, column) -> np.ndarray:
-        """Chebyshev coefficients (names, ORDER, ORDER) of a panel's normalised rest."""
+        """Chebyshev coefficients (2 names, ORDER^2) of a panel's normalised rest, real parts first."""
         rho, zeta = (
             low + (high - low) * (1 + np.cos(_ANGLES)) / 2
             for low, high in map(self._grid().edges, (row, column))
@@ -85,7 +85,8 @@ class Reflection:
         for i, name in enumerate(names):
             values[i] *= turned if name in ("k_xx", "k_phi", "k_zz") else turned * distance
             values[i] -= share.get(name, 0.0)
-        return _TO_COEFFICIENTS @ values @ _TO_COEFFICIENTS.T
+        coefficients = (_TO_COEFFICIENTS @ values @ _TO_COEFFICIENTS.T).reshape(len(names), -1)
+        return np.concatenate([coefficients.real, coefficients.imag])
 
     def _restored(self, names, found, inside, rho, zeta) -> dict:
         """Undoes the normalisation, and puts F's closed form back, at the true distance."""
@@ -137,12 +138,23 @@ def _quasi_static(kappa, k, rho, zeta, distance) -> dict:
 
 
 def _evaluate(coefficients, u, v):
-    """(names, n) Chebyshev sums at u, v (n,) in -1..1."""
-    along = np.polynomial.chebyshev.chebvander(u, ORDER - 1)
-    across = np.polynomial.chebyshev.chebvander(v, ORDER - 1)
-    count = len(coefficients)
-    rows = along @ coefficients.transpose(1, 0, 2).reshape(ORDER, -1)
-    return np.einsum("ncq,nq->cn", rows.reshape(len(u), count, ORDER), across)
+    """(names, n) Chebyshev sums at u, v (n,) in -1..1; coefficients (2 names, ORDER^2) real, parts apart."""
+    out = np.empty((len(coefficients) // 2, len(u)), dtype=complex)
+    for low in range(0, len(u), 512):
+        part = slice(low, low + 512)
+        products = _chebyshev(u[part])[:, None, :] * _chebyshev(v[part])[None, :, :]
+        real, imaginary = np.split(coefficients @ products.reshape(ORDER * ORDER, -1), 2)
+        out.real[:, part], out.imag[:, part] = real, imaginary
+    return out
+
+
+def _chebyshev(x):
+    """(ORDER, n) Chebyshev polynomials T_0, T_1, ... at x (n,)."""
+    out = np.empty((ORDER, len(x)))
+    out[0], out[1] = 1.0, x
+    for i in range(2, ORDER):
+        out[i] = 2 * x * out[i - 1] - out[i - 2]
+    return out
 
 
 @dataclass(frozen=True)
