@@ -20,7 +20,7 @@ from exposure.assessment.model import Polygon
 from exposure.assessment.panels import blind, cut, interpolation, nodes, refined, strengths_of
 from exposure.assessment.strengths import FieldStrengths, remembered
 
-ORDER = 7  # nodes a side: 49 in a panel
+ORDER = 5  # nodes a side: 49 in a panel
 LOOKS = 9  # places a side where the interpolated ratio is looked at
 KNOWN = 0.02  # of the logarithm of the ratio: 1 % of the distance where it falls off as 1/r^2
 SURELY = 2.0  # ratio at every node of a panel that a conductor crosses

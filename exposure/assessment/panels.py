@@ -13,7 +13,6 @@ import numpy as np
 
 SMALLEST_VALUE = 1e-300
 LARGEST_LOG = 600.0  # stands for inf
-NEAREST = 0.3  # of the longest side of a panel: a conductor nearer than this halves the panel
 
 
 @dataclass(frozen=True)
@@ -178,13 +177,14 @@ def strengths_of(logs, errors=0.0):
 
 
 def blind(panels, distance):
-    """Panels too large to be trusted for the conductors that pass near or through them, (n,) bool.
+    """Panels that a conductor may cross, (n,) bool: their tails are not to be trusted.
 
     distance : (n, d) -> (n,), from points of the region to the nearest conductor.
-    A conductor that crosses a panel of five nodes or more a side is within a quarter of the
-    longest side of some node, so that none can hide between the nodes, whatever the tails say.
+    Every point of a panel is within half the diagonal of the widest mesh of nodes from some node,
+    so that no conductor can hide between the nodes, whatever the tails say.
     """
     orders = panels.logs.shape[1:-1]
+    mesh = np.array([0.5 * np.diff(nodes(q)).max(initial=0.0) for q in orders])
     points = node_points(panels.lower, panels.upper, orders)
     nearest = distance(points.reshape(-1, points.shape[2])).reshape(points.shape[:2]).min(axis=1)
-    return nearest < NEAREST * panels.sides.max(axis=1)
+    return nearest <= 0.5 * np.linalg.norm(mesh * panels.sides, axis=1) * (1 + 1e-9)

@@ -1,0 +1,223 @@
+"""How far from the conductors the exposure ratio reaches one: compliance distance and setback.
+
+The search goes from outside inwards, shell by shell of equal distance, so that the outermost place
+is met first and no lobe or island beyond it is passed over.  Shells are sampled at a sixth of the
+shortest wavelength or half the distance, whichever is less, opened to the angle under which the
+conductors and their images are seen; where the samples are far below one they may be wider apart.
+Around the best samples small boxes of Chebyshev nodes then find the place itself.
+"""
+
+from dataclasses import dataclass
+
+import numpy as np
+
+from exposure.assessment.panels import sampled, strengths_of
+from exposure.assessment.shells import HEAD, around, aside
+from exposure.assessment.strengths import FieldStrengths
+
+FARTHEST = 1000.0  # m; beyond it a distance is called unbounded
+NEAREST = 0.001  # m; shells do not go nearer to an axis
+NEAREST_ASIDE = 0.05  # m, in plan
+REACH_MARGIN = 1.03  # on the compliance distance where it bounds another search
+QUIET = 0.1  # ratio that ends the way outwards, and below which shells may be coarse
+STEP = 0.25  # of the distance from shell to shell
+OVERSHOOT = 1.3  # a lobe may be that much higher than its highest sample
+LEAST_SEED = 0.5  # ratio; a power of distance is not trusted further than that
+BOXES = (0.30, 0.10, 0.03, 0.01)  # half sides of the boxes around the best place, of the distance
+CLIMBS = 6
+BOX_ORDER = 3
+BOX_LOOKS = 13
+SEEDS = 4
+
+
+@dataclass(frozen=True)
+class Distance:
+    """The largest distance from the conductors at which a ratio function is one or more.
+
+    Attributes
+    ----------
+    distance : float or None
+        [m]; 0 where the ratio is below one everywhere, None where no bound was found.
+    position : (3,) float or None
+    islands : tuple of (distance, position)
+        Other lobes that reach the limit on the outermost shell, to a few percent.
+    bounded : bool
+        False: the ratio is one or more, or was not seen to fall, as far as `FARTHEST`.
+    """
+
+    distance: float | None
+    position: tuple[float, float, float] | None
+    islands: tuple
+    bounded: bool
+
+
+def compliance_distances(strengths: FieldStrengths, ratios, farthest=FARTHEST) -> tuple[Distance, ...]:
+    """For each ratio function the largest distance to the nearest conductor axis, over up >= 0."""
+    search = _Search(strengths, tuple(ratios), strengths.distance, around, np.inf, NEAREST)
+    outer = search.outermost(farthest)
+    return search.inwards(outer, farthest)
+
+
+def setbacks(strengths: FieldStrengths, ratios, compliance) -> tuple[Distance, ...]:
+    """The same in plan, over the heights of people, 0-2 m above ground.
+
+    compliance : the result of :func:`compliance_distances`, which bounds the search.
+    """
+    drop = max(strengths.box[0, 2] - HEAD, 0.0)
+    reach = np.array([FARTHEST if c.distance is None else REACH_MARGIN * c.distance for c in compliance])
+    outer = np.sqrt(np.maximum(reach**2 - drop**2, 0.0))
+    near = [i for i in range(len(ratios)) if outer[i] > 0]
+    search = _Search(
+        strengths, tuple(ratios[i] for i in near), strengths.plan_distance, aside, HEAD, NEAREST_ASIDE
+    )
+    found = [Distance(0.0, None, (), True) for _ in ratios]
+    for i, place in zip(near, search.inwards(float(outer.max(initial=0.0)), FARTHEST), strict=True):
+        found[i] = place if compliance[i].bounded else Distance(None, None, (), False)
+    return tuple(found)
+
+
+class _Search:
+    def __init__(self, strengths, ratios, distance, shell, top, nearest):
+        self.strengths, self.ratios, self.distance, self.shell, self.top = (
+            strengths,
+            ratios,
+            distance,
+            shell,
+            top,
+        )
+        self.nearest = nearest
+        box = strengths.box
+        height = box[1, 2]
+        self.extent = 0.5 * np.linalg.norm([*(box[1] - box[0])[:2], 2 * height])
+
+    def outermost(self, farthest):
+        """A distance at which, and at twice which, every ratio is below `QUIET`. [m]"""
+        distance = max(0.5 * self.strengths.wavelength, self.extent)
+        before = np.inf
+        while distance < farthest:
+            _, ratios = self._shell(distance, 1.0)
+            most = ratios.max()
+            if most <= QUIET and before <= QUIET:
+                return distance
+            before = most
+            distance *= max(2.0 if most <= QUIET else 1.5, min(np.sqrt(most / QUIET), 3.0))
+        return farthest
+
+    def inwards(self, outer, farthest):
+        """Shells from `outer` until every ratio function has reached one."""
+        found = [None] * len(self.ratios)
+        seen = []
+        distance, coarse = outer, 2.0
+        while distance >= self.nearest and any(f is None for f in found):
+            points, ratios = self._shell(distance, coarse)
+            if len(points):
+                seen.append((points, self.distance(points), ratios))
+                for i in range(len(self.ratios)):
+                    if found[i] is None and ratios[i].max() >= 1:
+                        found[i] = self._unbounded() if distance >= farthest else self._locate(i, seen)
+            open_ = [i for i, f in enumerate(found) if f is None]
+            most = max((ratios[i].max() for i in open_), default=0.0) if len(points) else 0.0
+            coarse = 2.0 if most < QUIET else 1.0
+            distance = self._next(distance, coarse)
+        return tuple(f if f is not None else Distance(0.0, None, (), True) for f in found)
+
+    def _unbounded(self):
+        return Distance(None, None, (), False)
+
+    def _spacing(self, distance):
+        """Sixth of a wavelength, opened to the angle under which all sources are seen."""
+        return self.strengths.wavelength / 6 * max(1.0, distance / self.extent)
+
+    def _next(self, distance, coarse):
+        if distance < 0.02 * self.strengths.wavelength:
+            return distance / 1.6
+        return distance - min(STEP * distance, coarse * self._spacing(distance))
+
+    def _shell(self, distance, coarse):
+        spacing = min(0.5 * distance, coarse * self._spacing(distance))
+        points = self.shell(self.strengths, distance, spacing)
+        if not len(points):
+            return points, np.zeros((len(self.ratios), 0))
+        values = self.strengths.values(points)
+        return points, np.array([r(values) for r in self.ratios])
+
+    def _locate(self, i, seen):
+        """The place of ratio function i, from the shells seen so far."""
+        slope = self._slope(i, seen)
+        points = np.concatenate([s[0] for s in seen])
+        distances = np.concatenate([s[1] for s in seen])
+        ratios = np.concatenate([s[2][i] for s in seen])
+        reached = distances * np.clip(ratios, 1e-9, OVERSHOOT**4) ** (1 / slope)
+        hopeful = (ratios > LEAST_SEED) & (reached * OVERSHOOT ** (1 / slope) >= reached[ratios >= 1].max())
+        seeds = self._apart(points[hopeful], distances[hopeful], reached[hopeful])
+        first = sorted((self._climb(i, point, BOXES[0] * d) for point, d in seeds), key=lambda f: -f[1])
+        best = self._finer(i, *first[0], slope)
+        islands = tuple(
+            (float(d), _place(p)) for p, d in first[1:] if np.linalg.norm(p - best[1]) > 0.5 * d > 0
+        )
+        return Distance(float(best[0]), _place(best[1]), islands, True)
+
+    def _slope(self, i, seen):
+        """Power of distance with which ratio i falls between the last two shells, 2 to 6."""
+        if len(seen) < 2:
+            return 2.0
+        (_, d0, r0), (_, d1, r1) = seen[-2], seen[-1]
+        with np.errstate(divide="ignore", invalid="ignore"):
+            power = np.log(np.minimum(r1[i].max(), 1e9) / r0[i].max()) / np.log(d0.max() / d1.max())
+        return float(np.clip(power, 2.0, 6.0)) if np.isfinite(power) else 2.0
+
+    def _apart(self, points, distances, reached):
+        """The best few places, no two nearer than their distance from the conductors."""
+        chosen = []
+        for k in np.argsort(-reached):
+            if all(np.linalg.norm(points[k] - p) > 0.7 * distances[k] for p, _ in chosen):
+                chosen.append((points[k], distances[k]))
+            if len(chosen) == SEEDS:
+                break
+        return chosen
+
+    def _finer(self, i, place, distance, slope):
+        """Smaller boxes around a place, then one step outwards by the true field."""
+        for size in BOXES[1:]:
+            place, distance = self._climb(i, place, size * distance)
+        ratio = float(self.ratios[i](self.strengths.values(place[None]))[0])
+        return distance * np.clip(ratio, 0.5, 2.0) ** (1 / slope), place
+
+    def _climb(self, i, centre, half):
+        """Boxes of one size, until the farthest place that reaches one is within the box."""
+        for _ in range(CLIMBS):
+            place, distance = self._box(i, centre, half)
+            moved = np.abs(place - centre).max()
+            centre = place
+            if moved < 0.99 * half:
+                break
+        return place, distance
+
+    def _box(self, i, centre, half):
+        """The farthest place around a box where the interpolated ratio is one, and its distance.
+
+        From every place looked at that reaches one, the line of one is sought outwards along the
+        slope of the ratio, at most one look farther.  Where the ratio is below one everywhere: the
+        place where it is greatest, and 0.
+        """
+        lower, upper = centre - half, centre + half
+        lower[2] = np.clip(lower[2], 0.0, max(self.top - half, 0.0))
+        upper[2] = min(max(upper[2], half), self.top)
+        panel = sampled(self.strengths.values, lower[None], upper[None], (BOX_ORDER,) * 3)
+        axes = [np.linspace(a, b, BOX_LOOKS) for a, b in zip(lower, upper, strict=True)]
+        points = np.stack(np.meshgrid(*axes, indexing="ij"), axis=-1)
+        ratio = self.ratios[i](strengths_of(panel.grid((BOX_LOOKS,) * 3).reshape(points[..., 0].size, -1)))
+        logs = np.log(np.clip(ratio, 1e-9, 1e9)).reshape(points.shape[:3])
+        distances = self.distance(points.reshape(-1, 3)).reshape(logs.shape)
+        outwards = np.stack(np.gradient(distances, *axes), axis=-1)
+        falling = -(outwards * np.stack(np.gradient(logs, *axes), axis=-1)).sum(axis=-1)
+        look = 2 * half / (BOX_LOOKS - 1)
+        further = np.clip(logs / np.maximum(falling, logs.clip(1e-12) / look), 0.0, look)
+        reached = np.where(logs >= 0, distances + further, 0.0)
+        top = np.unravel_index(np.argmax(reached if reached.any() else logs), logs.shape)
+        place = points[top] + (further[top] if reached.any() else 0.0) * outwards[top]
+        return np.array([*place[:2], np.clip(place[2], 0.0, self.top)]), float(reached[top])
+
+
+def _place(point):
+    return tuple(float(x) for x in point)
