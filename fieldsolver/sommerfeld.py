@@ -119,8 +119,8 @@ class HalfSpace:
             rho.max() <= self.rho_max and zeta.max() <= self.zeta_max and zeta.min() >= self.zeta_min
         ):
             raise ValueError(
-                f"rho up to {rho.max():.6g} m, zeta {zeta.min():.6g} .. {zeta.max():.6g} m: this table covers "
-                f"rho up to {self.rho_max:.6g} m, zeta {self.zeta_min:.6g} .. {self.zeta_max:.6g} m"
+                f"rho to {rho.max():.6g} m, zeta {zeta.min():.6g} .. {zeta.max():.6g} m: this table covers "
+                f"rho to {self.rho_max:.6g} m, zeta {self.zeta_min:.6g} .. {self.zeta_max:.6g} m"
             )
         return rho, zeta
 

@@ -3,10 +3,10 @@
     K(rho, zeta) = integral of F(l) e^{-u0 zeta}/u0 J(l rho) l dl,  l = 0 .. infinity
 
 l = k0 sin t below k0 and k0 cosh t above take out 1/u0; panels of Gauss nodes shrink towards k0 (branch
-point and Zenneck pole, at about k0/|n| in t) and towards Re k1.  Beyond L > Re k1 the tail goes on along the real
-axis where zeta > 2 rho, and else up and down with the two Hankel functions, where it dies as e^{-s rho}:
-k1 lies to the left of that path, so no branch point is crossed (K. A. Michalski and J. R. Mosig,
-J. Electromagn. Waves Appl. 30 (2016) 281, review such paths).
+point and Zenneck pole, at about 1/|n| in t) and towards Re k1.  Beyond L > Re k1 the tail goes on along
+the real axis where zeta > 2 rho, and else up and down with the two Hankel functions, where it dies as
+e^{-s rho}: k1 lies to the left of that path, so no branch point is crossed (K. A. Michalski and
+J. R. Mosig, J. Electromagn. Waves Appl. 30 (2016) 281, review such paths [from memory]).
 """
 
 from functools import lru_cache
@@ -18,6 +18,7 @@ from fieldsolver.sommerfeld_spectrum import spectra, vertical_wavenumber
 
 NODES = 16
 PHASE = 14.0  # a panel of 16 Gauss nodes integrates cos over 14 rad to 1e-10
+CHUNK = 2048  # of nodes: a few tens of megabytes
 DECAY = 36.0  # e^{-36} = 2e-16
 
 
@@ -35,8 +36,11 @@ def remainders(permittivity: complex, k0: float, rho: np.ndarray, zeta: np.ndarr
     """
     last = 1.5 * k0 * max(np.sqrt(permittivity).real, 1.0)
     l, u0, weight = _head(permittivity, k0, last, rho.max(), zeta.max())
-    bessel = (j0(np.outer(l, rho)), j1(np.outer(l, rho)))
-    total = _sum(permittivity, k0, l, u0, weight, bessel, rho, zeta)
+    total = np.zeros((10, len(zeta), len(rho)), complex)
+    for part in range(0, len(l), CHUNK):
+        some = slice(part, part + CHUNK)
+        bessel = (j0(np.outer(l[some], rho)), j1(np.outer(l[some], rho)))
+        total += _sum(permittivity, k0, l[some], u0[some], weight[some], bessel, rho, zeta)
     split = int(np.searchsorted(zeta, 2 * rho.min(), side="right"))
     if split:
         total[:, :split] += _vertical_tail(permittivity, k0, last, rho, zeta[:split])
@@ -71,7 +75,7 @@ def _head(permittivity, k0, last, rho, zeta):
     end = float(np.arccosh(last / k0))
     near = max(abs(index.imag) / 2 / max(np.sinh(turn), 1.0), 1e-7)
     low = _split(_graded(0, np.pi / 2, np.pi / 2, fine), lambda t: k0 * (rho * np.sin(t) - zeta * np.cos(t)))
-    above = np.concatenate([_graded(0, turn, fine, near), _graded(turn, end, near, end)[1:]])
+    above = np.unique(np.concatenate([_graded(0, turn, fine, near), _graded(turn, end, near, end)]))
     high = _split(above, lambda t: k0 * rho * np.cosh(t))
     t, w = _nodes(low)
     s, v = _nodes(high)
