@@ -25,17 +25,17 @@ class LossyGround:
     relative_permittivity : float
         At least 1. [1]
     conductivity : float
-        Zero or more. [S/m]
+        Zero to 100; a better conductor is a perfect one. [S/m]
     """
 
     relative_permittivity: float
     conductivity: float
 
     def __post_init__(self):
-        if not self.relative_permittivity >= 1 or not self.conductivity >= 0:
+        if not self.relative_permittivity >= 1 or not 0 <= self.conductivity <= 100:
             raise GeometryError(
                 f"ground with relative permittivity {self.relative_permittivity} and conductivity "
-                f"{self.conductivity} S/m: the first must be at least 1, the second not negative"
+                f"{self.conductivity} S/m: the first must be at least 1, the second 0 to 100"
             )
 
     def complex_permittivity(self, angular_frequency: float) -> complex:

@@ -67,9 +67,16 @@ def _panels(problem, permittivity, contacts):
 
 
 def _spread(mesh, wavenumber: float) -> float:
-    """Diameter in plan of the segments whose evanescent field still reaches the ground. [m]"""
+    """Diameter in plan of what lies so low that its evanescent field still reaches the ground. [m]"""
     reach = _reaching(mesh, wavenumber)
-    corners = np.concatenate([mesh.start[reach, :2], mesh.end[reach, :2]])
+    low, high = mesh.start[reach], mesh.end[reach]
+    top = np.full(len(low), DECAY / wavenumber if wavenumber > 0 else np.inf)
+    rise = high[:, 2] - low[:, 2]
+    with np.errstate(divide="ignore", invalid="ignore"):
+        first = np.where(low[:, 2] > top, (top - low[:, 2]) / rise, 0.0)[:, None]
+        last = np.where(high[:, 2] > top, (top - low[:, 2]) / rise, 1.0)[:, None]
+    along = (high - low)[:, :2]
+    corners = np.concatenate([low[:, :2] + first * along, low[:, :2] + last * along])
     return float(np.linalg.norm(np.ptp(corners, axis=0))) if len(corners) else 0.0
 
 
