@@ -5,7 +5,8 @@ with that key, and every word in the message.  The words are the project's own.
 """
 
 import pytest
-from stations import DRAWN, FENCE, STATION, VERTICAL, changed
+
+from tests.exposure.stations import DRAWN, FENCE, STATION, VERTICAL, changed
 
 
 def case(name: str, old: str, new: str, extra: str = ""):

@@ -9,10 +9,10 @@ import time
 from pathlib import Path
 
 import pytest
-from broken_cases import CASES, expected
-from stations import DRAWN, FENCE, STATION, VERTICAL, changed
 
 from exposure.command_line import VERBS, main
+from tests.exposure.broken_cases import CASES, expected
+from tests.exposure.stations import DRAWN, FENCE, STATION, VERTICAL, changed
 
 ROOT = Path(__file__).parents[2]
 

@@ -4,9 +4,9 @@ import hashlib
 import math
 
 import pytest
-from stations import DRAWN, FENCE, STATION, VERTICAL, changed
 
 from exposure.site.site_file import read_site
+from tests.exposure.stations import DRAWN, FENCE, STATION, VERTICAL, changed
 
 
 @pytest.fixture

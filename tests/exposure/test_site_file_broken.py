@@ -4,11 +4,11 @@ import re
 from pathlib import Path
 
 import pytest
-from broken_cases import CASES, expected
-from stations import changed
 
 from exposure.errors import SiteFileError
 from exposure.site.site_file import read_site
+from tests.exposure.broken_cases import CASES, expected
+from tests.exposure.stations import changed
 
 BROKEN = sorted((Path(__file__).parent / "broken").glob("*.toml"))
 
