@@ -26,11 +26,12 @@ KNOWN = 0.02  # of the logarithm of the ratio: 1 % of the distance where it fall
 SURELY = 2.0  # ratio at every node of a panel that a conductor crosses
 CELLS_IN_SMALLEST_PANEL = 4
 MARGIN = 1.05  # on the compliance distance, for its own tolerance
-NEAR = 0.005  # m; vertices are moved until this near to the line, or NEAR_RELATIVE of the reach
-NEAR_RELATIVE = 5e-4
+NEAR = 0.01  # m; vertices are moved until this near to the line, or NEAR_RELATIVE of the reach
+NEAR_RELATIVE = 1e-3
+HALF_THE_LAYERS = 0.1  # of the ratio: then all of them are good to about its square
 CONDUCTOR = 0.06  # m, least width drawn
 FARTHEST = 1000.0  # m, where a boundary that has no end is cut off
-MOST_CELLS = 1_500_000
+MOST_CELLS = 200_000
 LAYERS = (5, 9, 17)  # heights in a band, each set holds the one before
 
 
@@ -43,7 +44,6 @@ class _Plane:
 
     points: object
     layers: int
-    gap: float
     lower: np.ndarray
     upper: np.ndarray
     outlines: shapely.Geometry
@@ -64,10 +64,9 @@ def horizontal(strengths: FieldStrengths, ratios, bottom, top, reach) -> tuple[t
     outlines = _in_band(strengths, bottom, top)
     for layers in LAYERS if top > bottom else (1,):
         heights = bottom + (top - bottom) * 0.5 * (nodes(layers) + 1)
-        gap = np.diff(heights).max(initial=0.0)
-        plane = _Plane(_above(heights), layers, gap, lower, upper, outlines)
-        found, settled = _regions(strengths, ratios, plane, reach)
-        if settled:
+        plane = _Plane(_above(heights), layers, lower, upper, outlines)
+        found = _Regions(strengths, tuple(ratios), plane, tuple(reach)).run()
+        if found is not None:
             break
     return found
 
@@ -84,8 +83,8 @@ def section(strengths: FieldStrengths, ratios, origin, bearing, half_width, top,
         return np.column_stack([plan, places[:, 1]])[:, None, :]
 
     lower, upper = np.array([-half_width, 0.0]), np.array([half_width, top])
-    plane = _Plane(points, 1, 0.0, lower, upper, _in_section(strengths, origin, along))
-    return _regions(strengths, ratios, plane, reach)[0]
+    plane = _Plane(points, 1, lower, upper, _in_section(strengths, origin, along))
+    return _Regions(strengths, tuple(ratios), plane, tuple(reach)).run()
 
 
 def _farthest(reach):
@@ -100,11 +99,6 @@ def _above(heights):
     return points
 
 
-def _regions(strengths, ratios, plane, reach):
-    """Polygons of each ratio function, and whether the layers were close enough."""
-    return _Regions(strengths, tuple(ratios), plane, tuple(reach)).run()
-
-
 class _Regions:
     """One plane: panels, raster, rings, and vertices moved onto the line."""
 
@@ -112,24 +106,26 @@ class _Regions:
         self.strengths, self.ratios, self.plane, self.reach = strengths, ratios, plane, reach
         self.farthest = _farthest(reach)
         self.cell = self._cell()
-        places = np.linspace(-1, 1, 4 * (plane.layers - 1) + 1)
+        places = np.linspace(-1, 1, 2 * (plane.layers - 1) + 1)
         self.between = interpolation(plane.layers, places) if plane.layers > 1 else np.ones((1, 1))
         self.values = remembered(self._layered)
 
     def run(self):
+        """Polygons of each ratio function, or None where the heights of the band are too few."""
         if self.farthest <= 0:
-            return tuple(() for _ in self.ratios), True
+            return tuple(() for _ in self.ratios)
         lower, upper = cut(self.plane.lower, self.plane.upper, 0.75 * self.strengths.wavelength)
         self.step = (upper - lower)[0] / 2 ** np.ceil(np.log2((upper - lower)[0] / self.cell))
         orders = (ORDER, ORDER)
         panels = refined(self.values, lower, upper, orders, self._across, self._wanted)
-        fields = self._rasters(panels)
-        return tuple(self._polygons(i, f) for i, f in enumerate(fields)), self._settled(panels)
+        if not self._settled(panels):
+            return None
+        return tuple(self._polygons(i, f) for i, f in enumerate(self._rasters(panels)))
 
     def _cell(self):
         area = np.prod(self.plane.upper - self.plane.lower)
         least = min((r for r in self.reach if r), default=self.farthest)
-        return max(np.clip(least / 40, 0.01, 0.25), np.sqrt(area / MOST_CELLS))
+        return max(np.clip(least / 20, 0.02, 0.25), np.sqrt(area / MOST_CELLS))
 
     def _layered(self, places):
         """Values at all layers side by side, (n, layers * m)."""
@@ -137,10 +133,15 @@ class _Regions:
         return self.strengths.values(points.reshape(-1, 3)).reshape(len(places), -1)
 
     def _distance(self, places):
-        """Distance to the nearest conductor, at any height of the band (a lower bound)."""
-        points = self.plane.points(places)
-        near = self.strengths.distance(points.reshape(-1, 3)).reshape(points.shape[:2]).min(axis=1)
-        return np.maximum(near - 0.5 * self.plane.gap, 0.0)
+        """Distance to the nearest conductor from any height of the plane or band, (n,). [m]
+
+        Conductors outside the band are nearest to its lowest or highest layer, those in it in plan.
+        """
+        points = self.plane.points(places)[:, [0, -1]]
+        near = self.strengths.distance(points.reshape(-1, 3)).reshape(-1, 2).min(axis=1)
+        if self.plane.outlines.is_empty:
+            return near
+        return np.minimum(near, shapely.distance(self.plane.outlines, shapely.points(places)))
 
     def _wanted(self, lower, upper):
         half = 0.5 * np.linalg.norm(upper - lower, axis=1)
@@ -216,16 +217,20 @@ class _Regions:
         return logs
 
     def _settled(self, panels):
-        """Whether the heights of the band are close enough where the ratio is near one."""
-        if self.plane.layers in (1, LAYERS[-1]) or not len(panels):
+        """Whether every second height of the band would nearly do, where the ratio is near one."""
+        layers = self.plane.layers
+        if layers in (1, LAYERS[-1]) or not len(panels):
             return True
         panels = panels[self._may_exceed(panels)]
-        logs = panels.logs.reshape(-1, self.plane.layers, panels.logs.shape[-1] // self.plane.layers)
-        spare = interpolation(self.plane.layers // 2 + 1, nodes(self.plane.layers))
-        change = np.abs(logs - np.einsum("ab,nbm->nam", spare, logs[:, ::2])).max(axis=(1, 2))
+        logs = panels.logs.reshape(-1, layers, panels.logs.shape[-1] // layers)
+        if not len(logs):
+            return True
+        fewer = np.einsum("ab,nbm->nam", interpolation(layers // 2 + 1, nodes(layers)), logs[:, ::2])
         for i in range(len(self.ratios)):
-            ratio = self._ratio(i, panels.logs).reshape(-1)
-            if np.any((ratio > 0.5) & (ratio < 2) & (change > 10 * KNOWN)):
+            full = self._ratio(i, logs.reshape(len(logs), -1))
+            half = self._ratio(i, fewer.reshape(len(logs), -1))
+            near = (full > 0.5) & (full < 2)
+            if np.any(np.abs(half[near] - full[near]) > HALF_THE_LAYERS * full[near]):
                 return False
         return True
 
@@ -261,7 +266,7 @@ class _Regions:
             logs = np.log(np.clip(self.values(places[active]), 1e-300, 1e260))
             ratio = np.log(np.clip(self._ratio(i, logs), 0.5, 2.0))
             move = ratio / size[active]
-            far = np.abs(move) > near
+            far = np.abs(move) > 0.5 * near
             if not far.any():
                 break
             active, move = active[far], np.clip(move[far], -2 * self.step.max(), 2 * self.step.max())

@@ -89,7 +89,10 @@ AREAS = {
     "house": (rectangle(8, -4, 16, 4, 2.8, 4.8), 2_000),
     "lot": (rectangle(-30, -30, 30, 30, 0, 2), 6_500),
     "near the end": (rectangle(6, -4, 12, 4, 5, 9), 5_000),
-    "round a corner": (Prism(shapely.Polygon([(-8, 2), (-8, 10), (10, 10), (10, -6), (7, -6), (7, 2)]), 6, 9.5), 12_000),
+    "round a corner": (
+        Prism(shapely.Polygon([(-8, 2), (-8, 10), (10, 10), (10, -6), (7, -6), (7, 2)]), 6, 9.5),
+        12_000,
+    ),
     "path": (Prism(shapely.LineString([(-20, 5), (0, 6), (20, -9)]).buffer(1), 0, 2), 2_500),
 }
 

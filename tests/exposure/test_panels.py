@@ -89,7 +89,9 @@ def test_a_conductor_that_crosses_a_panel_is_noticed_wherever_it_lies(order):
     """Straight wires through 400 random places of a panel, in random directions."""
     random = np.random.default_rng(5)
     panel = sampled(lambda p: 1 + p**2, np.zeros((1, 3)), np.array([[1.0, 2.0, 0.5]]), (order,) * 3)
-    for place, along in zip(random.uniform(0, [1, 2, 0.5], (400, 3)), random.normal(size=(400, 3)), strict=True):
+    for place, along in zip(
+        random.uniform(0, [1, 2, 0.5], (400, 3)), random.normal(size=(400, 3)), strict=True
+    ):
         wire = np.array([place - 5 * along, place + 5 * along])
         strengths = FieldStrengths(None, (wire,), 1.0)
         assert blind(panel, strengths.distance).all()
