@@ -1,0 +1,65 @@
+"""How far each transmission, and all together, reach the limit."""
+
+from dataclasses import dataclass
+
+import numpy as np
+
+from exposure.assessment.distances import Distance, compliance_distances, setbacks
+from exposure.assessment.model import TransmissionResult
+from exposure.assessment.ratios import Rule
+from exposure.assessment.scene import Part, Scene, own_rule, own_strengths
+from exposure.site.model import Transmission
+
+
+@dataclass(frozen=True)
+class Reach:
+    """Of one transmission by one rule (on the values of its own part)."""
+
+    transmission: Transmission
+    rule: Rule
+    compliance: Distance | None
+    setback: Distance | None
+
+    def result(self) -> TransmissionResult:
+        """For the result file."""
+        if self.compliance is None:
+            return TransmissionResult(self.rule.limits, self.rule.population, None, None, "; ".join(self.rule.missing))
+        notes = list(self.rule.missing)
+        if not self.compliance.bounded:
+            notes.append("the exposure ratio was not seen to fall below one: no distance is given")
+        for name, found in (("beyond the wires", self.compliance), ("in plan, 0-2 m", self.setback)):
+            notes += [f"another lobe reaches {distance:.2f} m {name}" for distance, _ in found.islands]
+        return TransmissionResult(
+            self.rule.limits,
+            self.rule.population,
+            self.compliance.distance if not self.rule.missing else None,
+            self.setback.distance if not self.rule.missing else None,
+            "; ".join(notes),
+        )
+
+    @property
+    def places(self) -> list:
+        """Where the limit is reached farthest out."""
+        found = [d.position for d in (self.compliance, self.setback) if d is not None]
+        return [place for place in found if place is not None]
+
+
+def reaches(scene: Scene, part: Part) -> tuple[Reach, ...]:
+    """Of every transmission of a part, by every set and population, from one search."""
+    asked = [
+        (transmission, own_rule(pair, part, transmission))
+        for transmission in part.transmissions
+        for pair in scene.pairs()
+    ]
+    usable = [i for i, (_, rule) in enumerate(asked) if rule.tests]
+    ratios = [asked[i][1].ratio for i in usable]
+    strengths = own_strengths(part)
+    compliance = compliance_distances(strengths, ratios) if ratios else ()
+    aside = setbacks(strengths, ratios, compliance) if ratios else ()
+    found = {i: (compliance[j], aside[j]) for j, i in enumerate(usable)}
+    return tuple(Reach(*pair, *found.get(i, (None, None))) for i, pair in enumerate(asked))
+
+
+def places(found) -> np.ndarray:
+    """All places of reaches where a limit is met farthest out, (n, 3)."""
+    return np.array([place for reach in found for place in reach.places], dtype=float).reshape(-1, 3)

@@ -1,0 +1,145 @@
+"""A station as the searches see it: one function of position, and the rules that turn it into ratios."""
+
+from dataclasses import dataclass, replace
+
+import numpy as np
+
+from exposure.assessment.ratios import Emission, Rule
+from exposure.assessment.rules import populations, rule
+from exposure.assessment.strengths import FieldStrengths
+from exposure.errors import ExposureError
+from exposure.site.model import Site, Transmission
+from exposure.station.powers import Powers, powers
+from exposure.station.sources import GeometryError, Model, Source, SourceError, Sources
+
+GENERAL_PUBLIC = "general_public"
+
+
+@dataclass(frozen=True)
+class Part:
+    """One solved antenna at one frequency, the transmissions that use it, and its place in the values."""
+
+    source: Source
+    transmissions: tuple[Transmission, ...]
+    column: int
+
+    @property
+    def columns(self) -> slice:
+        """Of the values of the whole scene."""
+        return slice(self.column, self.column + 2 * len(self.source.currents))
+
+
+@dataclass(frozen=True)
+class Scene:
+    """Parts side by side; unsolved : (name, reason) of transmissions without a solution."""
+
+    site: Site
+    parts: tuple[Part, ...]
+    unsolved: tuple[tuple[str, str], ...]
+
+    def values(self, points) -> np.ndarray:
+        """(n, m) squared strengths per accepted watt of all parts at points (n, 3) [m]."""
+        return np.concatenate([part.source.squared_strengths(points) for part in self.parts], axis=1)
+
+    @property
+    def strengths(self) -> FieldStrengths:
+        """Of all parts."""
+        wires = dict.fromkeys(axis for part in self.parts for axis in _axes(part.source.model.states[0].conductors))
+        shortest = min(part.source.model.wavelength for part in self.parts)
+        return FieldStrengths(self.values, _arrays(wires), shortest)
+
+    @property
+    def emissions(self) -> tuple[Emission, ...]:
+        """Of all solved transmissions, in the order of the file."""
+        found = {
+            transmission.name: _emission(transmission, part, part.column)
+            for part in self.parts
+            for transmission in part.transmissions
+        }
+        return tuple(found[t.name] for t in self.site.transmissions if t.name in found)
+
+    def rules(self) -> tuple[Rule, ...]:
+        """Of every set and population that somebody here belongs to; the general public always."""
+        return tuple(rule(*pair, self.emissions, self.unsolved) for pair in self.pairs())
+
+    def pairs(self):
+        """(limits, population) that have levels and matter here, in the order of the file."""
+        here = dict.fromkeys([GENERAL_PUBLIC, *(area.population for area in self.site.areas)])
+        return [(limits, who) for limits in self.site.limits for who in here if who in populations(limits)]
+
+    def with_source(self, index: int, source: Source) -> "Scene":
+        """The same with another solution of one part."""
+        parts = list(self.parts)
+        parts[index] = replace(parts[index], source=source)
+        return replace(self, parts=tuple(parts))
+
+
+def own_strengths(part: Part) -> FieldStrengths:
+    """Of one part alone, its distances measured from the antenna's own conductors."""
+    axes = dict.fromkeys(_axes(part.source.model.own))
+    return FieldStrengths(part.source.squared_strengths, _arrays(axes), part.source.model.wavelength)
+
+
+def own_rule(pair, part: Part, transmission: Transmission) -> Rule:
+    """A set and population for one transmission, on the values of its part alone."""
+    return rule(*pair, (_emission(transmission, part, 0),))
+
+
+def scene(site: Site, sources: Sources, progress) -> Scene:
+    """Every transmission solved once for its antenna and frequency.
+
+    Raises
+    ------
+    ExposureError
+        Where conductors cannot be modelled, in the operator's words.
+    """
+    users, models = {}, {}
+    for transmission in site.transmissions:
+        users.setdefault((transmission.antenna, transmission.frequency), []).append(transmission)
+    parts, unsolved, column = [], [], 0
+    for (antenna, frequency), transmissions in users.items():
+        progress(f"solving antenna '{antenna}' at {frequency / 1e6:g} MHz")
+        try:
+            models[antenna] = sources.model(transmissions[0])
+            source = sources.source(transmissions[0])
+        except GeometryError as error:
+            raise ExposureError(_cannot(antenna, frequency, error, models.get(antenna))) from None
+        except SourceError as error:
+            unsolved += [(t.name, f"no solution was found: {error}") for t in transmissions]
+            continue
+        parts.append(Part(source, tuple(transmissions), column))
+        column += 2 * len(source.currents)
+    return Scene(site, tuple(parts), tuple(unsolved))
+
+
+
+
+def _cannot(antenna: str, frequency: float, error, model: Model | None) -> str:
+    owners = "" if model is None else f"; conductors are numbered from 0: {_numbered(model)}"
+    return f"antenna '{antenna}' at {frequency / 1e6:g} MHz cannot be modelled: {error}{owners}"
+
+
+def _numbered(model: Model) -> str:
+    spans = {}
+    for number, piece in enumerate(model.pieces):
+        spans.setdefault(piece.owner, []).append(number)
+    return ", ".join(f"{s[0]}-{s[-1]} '{owner}'" if len(s) > 1 else f"{s[0]} '{owner}'" for owner, s in spans.items())
+
+
+def _emission(transmission: Transmission, part: Part, column: int) -> Emission:
+    return Emission(
+        transmission.name,
+        transmission.exclusive,
+        transmission.frequency,
+        powers(transmission),
+        column,
+        len(part.source.currents),
+    )
+
+
+def _axes(conductors):
+    return [(wire.start, wire.end) for wire in conductors]
+
+
+def _arrays(axes):
+    return tuple(np.array(axis) for axis in axes)

@@ -1,0 +1,1 @@
+"""A station's transmissions as powers and as sources of fields."""
