@@ -26,3 +26,17 @@ class Level:
     averaging_time_s: float
     clause: str
     verified: bool = True
+
+
+@dataclass(frozen=True)
+class Summation:
+    """How a document adds two or more transmissions.
+
+    electric_and_magnetic_add : ((effect, scope, frequency in Hz), ...), the tests in which it adds
+    (E/E_L)^2 + (H/H_L)^2 up to that frequency.  Everywhere else the quotients of E, of H and of S
+    are summed apart and the largest sum counts; stimulation is summed linearly in field.
+    """
+
+    electric_and_magnetic_add: tuple[tuple[Effect, Scope, float], ...]
+    clause: str
+    verified: bool = True

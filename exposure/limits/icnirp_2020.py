@@ -1,0 +1,83 @@
+"""ICNIRP 2020: reference levels from 100 kHz to 300 GHz."""
+
+from exposure.errors import OutOfScopeError
+from exposure.limits.tables import Row, Table
+from exposure.limits.types import Level, Summation
+
+TITLE = "ICNIRP guidelines for limiting exposure to electromagnetic fields (100 kHz to 300 GHz)"
+EDITION = "2020"
+REFERENCE = (
+    "ICNIRP, Health Physics 118 (2020) 483-524; nerve stimulation: ICNIRP, Health Physics 99 (2010) 818-836"
+)
+POPULATIONS = ("general_public", "occupational")
+SUMMATION = Summation(
+    electric_and_magnetic_add=(("heating", "whole_body", 30e6),),
+    clause="ICNIRP 2020, simultaneous exposure, whole-body reference levels (from memory)",
+)
+
+# f in MHz.  The text assigns edges: the lower end of a range is exclusive, 100 kHz is included.
+TABLE_5 = {
+    "occupational": (
+        #   MHz             E V/m         H A/m        S W/m2
+        Row(0.1, 30.0, (660.0, -0.7), (4.9, -1), None),
+        Row(30.0, 400.0, 61.0, 0.16, 10.0, without_low=True),
+        Row(400.0, 2000.0, (3.0, 0.5), (0.008, 0.5), (1 / 40, 1), without_low=True),
+        Row(2000.0, 300_000.0, None, None, 50.0, without_low=True),
+    ),
+    "general_public": (
+        Row(0.1, 30.0, (300.0, -0.7), (2.2, -1), None),
+        Row(30.0, 400.0, 27.7, 0.073, 2.0, without_low=True),
+        Row(400.0, 2000.0, (1.375, 0.5), (0.0037, 0.5), (1 / 200, 1), without_low=True),
+        Row(2000.0, 300_000.0, None, None, 10.0, without_low=True),
+    ),
+}
+# 275 and 55 over f^0.177 with f in GHz: the coefficient for MHz is 1000^0.177 times that.
+_GIGAHERTZ = 1000.0**0.177
+TABLE_6 = {
+    "occupational": (
+        Row(0.1, 30.0, (1504.0, -0.7), (10.8, -1), None),
+        Row(30.0, 400.0, 139.0, 0.36, 50.0, without_low=True),
+        Row(400.0, 2000.0, (10.58, 0.43), (0.0274, 0.43), (0.29, 0.86), without_low=True),
+        Row(2000.0, 6000.0, None, None, 200.0, without_low=True),
+        Row(6000.0, 300_000.0, None, None, (275.0 * _GIGAHERTZ, -0.177), without_low=True, without_high=True),
+        Row(300_000.0, 300_000.0, None, None, 100.0),
+    ),
+    "general_public": (
+        Row(0.1, 30.0, (671.0, -0.7), (4.9, -1), None),
+        Row(30.0, 400.0, 62.0, 0.163, 10.0, without_low=True),
+        Row(400.0, 2000.0, (4.72, 0.43), (0.0123, 0.43), (0.058, 0.86), without_low=True),
+        Row(2000.0, 6000.0, None, None, 40.0, without_low=True),
+        Row(6000.0, 300_000.0, None, None, (55.0 * _GIGAHERTZ, -0.177), without_low=True, without_high=True),
+        Row(300_000.0, 300_000.0, None, None, 20.0),
+    ),
+}
+STIMULATION = {
+    "occupational": (Row(0.1, 10.0, 170.0, 80.0, None),),
+    "general_public": (Row(0.1, 10.0, 83.0, 21.0, None),),
+}
+
+
+def _tables(population: str) -> tuple[Table, ...]:
+    return (
+        Table("heating", "whole_body", "mean", 1800.0, "ICNIRP 2020, Table 5", TABLE_5[population]),
+        Table("heating", "local", "peak", 360.0, "ICNIRP 2020, Table 6", TABLE_6[population]),
+        Table(
+            "stimulation",
+            "any",
+            "peak",
+            0.0,
+            "ICNIRP 2020, Table 8 (values of ICNIRP 2010, Tables 3 and 4)",
+            STIMULATION[population],
+        ),
+    )
+
+
+def reference_levels(population: str, frequency: float) -> tuple[Level, ...]:
+    """The levels of Tables 5, 6 and, up to 10 MHz, 8 at a frequency [Hz]."""
+    found = tuple(table.level(frequency) for table in _tables(population))
+    levels = tuple(level for level in found if level is not None)
+    if not levels:
+        raise OutOfScopeError(
+            f"icnirp_2020 has levels from 0.1 MHz to 300 GHz, not at {frequency / 1e6:g} MHz"
+        )
+    return levels
