@@ -12,7 +12,7 @@ REFERENCE = (
 POPULATIONS = ("general_public", "occupational")
 SUMMATION = Summation(
     electric_and_magnetic_add=(),
-    clause="OET Bulletin 65, section 2: quotients of power density, or of the squares of E and of H apart (from memory)",
+    clause="OET Bulletin 65, section 2: quotients of S, or of the squares of E and of H apart (from memory)",
 )
 
 # S in mW/cm2 as printed; f in MHz.  Edges are not assigned by the text: the lower value counts.
