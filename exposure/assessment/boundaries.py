@@ -23,7 +23,7 @@ from exposure.assessment.strengths import FieldStrengths, remembered
 ORDER = 5  # nodes a side: 49 in a panel
 LOOKS = 9  # places a side where the interpolated ratio is looked at
 KNOWN = 0.02  # of the logarithm of the ratio: 1 % of the distance where it falls off as 1/r^2
-SURELY = 2.0  # ratio at every node of a panel that a conductor crosses
+SURELY = 1.2  # ratio at every node of a panel that a conductor crosses
 CELLS_IN_SMALLEST_PANEL = 4
 MARGIN = 1.05  # on the compliance distance, for its own tolerance
 NEAR = 0.01  # m; vertices are moved until this near to the line, or NEAR_RELATIVE of the reach

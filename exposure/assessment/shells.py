@@ -20,7 +20,7 @@ def around(strengths, distance, spacing):
     parts = [(tips[:, None, :] + distance * _ball(distance, spacing)).reshape(-1, 3)]
     feet = [tips]
     for start, end in zip(starts, ends, strict=True):
-        foot = _along(start, end, max(0.5 * distance, min(spacing, strengths.wavelength / 24)))
+        foot = _along(start, end, distance, strengths.wavelength)
         feet.append(foot)
         parts.append((foot[:, None, :] + distance * _circle(end - start, distance, spacing)).reshape(-1, 3))
     parts.append(_on_ground(np.concatenate(feet), distance, spacing))
@@ -40,7 +40,7 @@ def aside(strengths, distance, spacing):
         length = np.linalg.norm(along)
         if length > 1e-9:
             normal = np.array([-along[1], along[0]]) / length
-            foot = _along(start, end, max(0.5 * distance, min(spacing, strengths.wavelength / 24)))
+            foot = _along(start, end, distance, strengths.wavelength)
             parts += [foot + distance * normal, foot - distance * normal]
     plan = np.concatenate(parts)
     plan = _thinned(plan, strengths.plan_distance, distance, spacing)
@@ -54,10 +54,15 @@ def _heights(tips, spacing):
     return np.union1d(even, tips[(tips >= 0) & (tips <= HEAD)][:: 1 + len(tips) // 8])
 
 
-def _along(start, end, step):
+def _along(start, end, distance, wavelength):
+    """Places along a piece: half the distance apart, or a 24th of a wavelength where that is more.
+
+    Charge and current change along a wire on the scale of the wavelength however near one looks;
+    what changes faster is at its ends, and those have their spheres.
+    """
     length = np.linalg.norm(end - start)
-    count = 1 + int(np.ceil(length / max(min(step, length / PIECES) if step > length else step, 1e-9)))
-    return start + np.linspace(0, 1, count)[:, None] * (end - start)
+    step = max(0.5 * distance, min(wavelength / 24, length / PIECES), 1e-9)
+    return start + np.linspace(0, 1, 1 + int(np.ceil(length / step)))[:, None] * (end - start)
 
 
 def _angles(distance, spacing):

@@ -2,8 +2,12 @@
 
 import numpy as np
 import pytest
+import shapely
 
+from exposure.assessment.areas import greatest
+from exposure.assessment.boundaries import horizontal, section
 from exposure.assessment.distances import compliance_distances, setbacks
+from exposure.assessment.prisms import Prism
 from exposure.assessment.shells import around
 from tests.exposure.positions import GARDEN_WIRE, first_over, garden, heating, sphere, strengths
 
@@ -47,23 +51,17 @@ def test_a_field_that_does_not_fall_has_no_distance():
 
 
 def rays(function, ratio, step):
-    """Greatest distance with ratio >= 1 along rays of the garden dipole, every 2 degrees and 0.125 m."""
-    distance = np.arange(0.2, 32, step)
-    best = 0.0
-    for angle in np.radians(np.arange(-90, 91, 2.0)):
-        for foot in np.linspace(-5, 0, 41):
-            points = np.column_stack(
-                [np.full(len(distance), foot), distance * np.cos(angle), 9 + distance * np.sin(angle)]
-            )
-            above = points[:, 2] >= 0
-            over = ratio(function(points[above])) >= 1
-            best = max(best, distance[above][over].max(initial=0.0))
-    return best
+    """Greatest distance with ratio >= 1 across half the garden dipole, every 3 degrees and 0.25 m."""
+    axes = np.linspace(-5, 0, 21), np.radians(np.arange(-90, 91, 3.0)), np.arange(0.2, 32, step)
+    foot, angle, distance = (a.ravel() for a in np.meshgrid(*axes, indexing="ij"))
+    points = np.column_stack([foot, distance * np.cos(angle), 9 + distance * np.sin(angle)])
+    above = points[:, 2] >= 0
+    return distance[above][ratio(function(points[above])) >= 1].max(initial=0.0)
 
 
 @pytest.mark.parametrize("current", [2.0, 8.0])
 def test_the_distance_of_a_dipole_over_ground(current):
-    """Rays miss at most their step and the sagitta of 2 degrees: never farther than the search.
+    """Rays end at most their step, 2 cm, short, and beside the farthest place: never beyond the search.
 
     Budget: the count measured when this was written and a quarter more.
     """
@@ -137,3 +135,24 @@ def test_a_shell_lies_at_its_distance_and_leaves_no_gap():
     places = foot + 3 * np.column_stack([np.zeros(2000), np.cos(angle), np.sin(angle)])
     gaps = np.linalg.norm(places[:, None] - shell, axis=2).min(axis=1)
     assert gaps.max() < 1.5 * spacing
+
+
+def test_all_searches_of_a_garden_station_within_their_points():
+    """Five planes, two sections, four areas, distances and setbacks for six ratio functions.
+
+    Budget: 31,000 points measured on 1 December 2026 and a tenth more.
+    """
+    limits = (*LIMITS, heating(61, 0.33), heating(137, 0.36))
+    field = strengths(garden(current=1.0), [GARDEN_WIRE])
+    reach = [c.distance for c in compliance_distances(field, limits)]
+
+    for bottom, top in ((0, 2), (2.8, 4.8), (5.6, 7.6), (9, 9), (7, 7)):
+        horizontal(field, limits, bottom, top, reach)
+    for bearing in (0, np.pi / 2):
+        section(field, limits, (0, 0), bearing, 30, 30, reach)
+    house, lot = shapely.box(8, -4, 16, 4), shapely.box(-30, -30, 30, 30)
+    pavement = shapely.LineString([(-30, 18), (30, 18)]).buffer(1)
+    for outline, bottom, top in ((house, 2.8, 4.8), (house, 5.6, 7.6), (lot, 0, 2), (pavement, 0, 2)):
+        greatest(field, limits, Prism(outline, bottom, top))
+
+    assert field.values.points < 34_000
