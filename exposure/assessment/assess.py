@@ -6,7 +6,7 @@ import numpy as np
 import shapely
 import shapely.ops
 
-import exposure
+from exposure import __version__
 from exposure.assessment import wording
 from exposure.assessment.judged_areas import SearchedArea, judged, searched
 from exposure.assessment.judged_property import judged_property, unguarded_zone
@@ -149,7 +149,7 @@ def _assessment(found: Found, progress) -> Assessment:
     unguarded = unguarded_zone(scene_, drawn)
     return Assessment(
         site=wording.site_info(site),
-        software=Software("exposure", exposure.__version__),
+        software=Software("exposure", __version__),
         limits=wording.limit_infos(site),
         verdict=verdict,
         reasons=wording.reasons(verdict, areas, property_, property_verdict, found.doubts, scene_.unsolved),

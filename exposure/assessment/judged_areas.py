@@ -58,7 +58,9 @@ def _result(scene: Scene, rule: Rule, exposure: Exposure | None, factor: float, 
     doubts = [*rule.missing, *doubts]
     decision = DecisionRule(scene.site.decision, scene.site.margin)
     if exposure is None:
-        verdict, reason = decide(decision, None, doubts or [f"{rule.limits} has no level for these transmissions"])
+        verdict, reason = decide(
+            decision, None, doubts or [f"{rule.limits} has no level for these transmissions"]
+        )
         return AreaResult(rule.limits, None, None, None, None, None, None, None, verdict, reason)
     peak = exposure.peak
     values = peak.values[None, :]
@@ -71,10 +73,12 @@ def _result(scene: Scene, rule: Rule, exposure: Exposure | None, factor: float, 
         exposure_ratio=_number(peak.ratio),
         body_average_ratio=_number(exposure.body_average),
         upper_bound_ratio=_number(ratio.upper),
-        position_m=peak.position,
+        position_m=tuple(round(x, 6) + 0.0 for x in peak.position),
         electric_v_per_m=_number(cause.electric) if finite else None,
         magnetic_a_per_m=_number(cause.magnetic) if finite else None,
-        governing=Governing(cause.effect, cause.quantity, cause.transmission, cause.clause) if finite else None,
+        governing=Governing(cause.effect, cause.quantity, cause.transmission, cause.clause)
+        if finite
+        else None,
         verdict=verdict,
         reason=reason,
         shares=tuple(Share(name, part) for name, part in cause.shares) if finite else (),
@@ -99,8 +103,8 @@ def _too_near(scene: Scene, area: Area):
         own = part.source.model.own
         if nearest(own, own[:0], (area,)) < NEAREST:
             yield (
-                f"part of it is within {100 * NEAREST:.0f} cm of antenna '{part.source.model.antenna}', where "
-                "levels of the undisturbed field do not stand for what a body absorbs"
+                f"part of it is within {100 * NEAREST:.0f} cm of antenna '{part.source.model.antenna}', where levels "
+                "of the undisturbed field do not stand for what a body absorbs"
             )
 
 

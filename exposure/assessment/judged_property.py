@@ -41,7 +41,9 @@ def judged_property(scene: Scene, rules: tuple[Rule, ...], zones: Zones, doubts)
 
 def line_error(zones: Zones) -> float:
     """How far a judged boundary may be from where it was drawn. [m]"""
-    farthest = max((r for line, r in zip(zones.lines, zones.reach, strict=True) if line.raised and r), default=0.0)
+    farthest = max(
+        (r for line, r in zip(zones.lines, zones.reach, strict=True) if line.raised and r), default=0.0
+    )
     return LINE_ERROR * farthest
 
 
@@ -60,20 +62,22 @@ def _at_all_heights(scene: Scene, outline, zones: Zones) -> bool | None:
     """Yes where all space within reach of the wires is above the property; no where a drawn plane says so."""
     if not zones.elsewhere.difference(outline).is_empty:
         return False
-    farthest = max((r for line, r in zip(zones.lines, zones.reach, strict=True) if line.raised and r), default=0.0)
+    farthest = max(
+        (r for line, r in zip(zones.lines, zones.reach, strict=True) if line.raised and r), default=0.0
+    )
     starts, ends = scene.strengths.segments
     wires = shapely.MultiLineString([(a[:2], b[:2]) for a, b in zip(starts, ends, strict=True)])
     return True if outline.contains(wires.buffer(farthest * (1 + LINE_ERROR) + 1e-6)) else None
 
 
 def unguarded_zone(scene: Scene, zones: Zones):
-    """The zone at 0-2 m that no area of the general public covers, on the property where there is one."""
+    """The zone at 0-2 m that no area covers, on the property where there is one; None without one."""
     zone = zones.standing.buffer(line_error(zones)) if not zones.standing.is_empty else zones.standing
     if scene.site.property_corners is not None:
         zone = zone.intersection(shapely.Polygon(scene.site.property_corners))
     for area in scene.site.areas:
         shape = prism(area)
         covers = shape.bottom <= STANDING[0] and shape.top >= STANDING[1]
-        if area.population == GENERAL_PUBLIC and covers and isinstance(shape.outline, shapely.Polygon):
+        if covers and isinstance(shape.outline, shapely.Polygon):
             zone = zone.difference(shape.outline)
     return zone if zone.area > SMALLEST_ZONE else None

@@ -2,8 +2,6 @@
 
 from dataclasses import dataclass
 
-import numpy as np
-
 from exposure.assessment.distances import Distance, compliance_distances, setbacks
 from exposure.assessment.model import TransmissionResult
 from exposure.assessment.ratios import Rule
@@ -23,12 +21,13 @@ class Reach:
     def result(self) -> TransmissionResult:
         """For the result file."""
         if self.compliance is None:
-            return TransmissionResult(self.rule.limits, self.rule.population, None, None, "; ".join(self.rule.missing))
+            return TransmissionResult(
+                self.rule.limits, self.rule.population, None, None, "; ".join(self.rule.missing)
+            )
         notes = list(self.rule.missing)
         if not self.compliance.bounded:
             notes.append("the exposure ratio was not seen to fall below one: no distance is given")
-        for name, found in (("beyond the wires", self.compliance), ("in plan, 0-2 m", self.setback)):
-            notes += [f"another lobe reaches {distance:.2f} m {name}" for distance, _ in found.islands]
+        notes += _elsewhere(self.compliance, "from the wires") + _elsewhere(self.setback, "in plan at 0-2 m")
         return TransmissionResult(
             self.rule.limits,
             self.rule.population,
@@ -60,6 +59,12 @@ def reaches(scene: Scene, part: Part) -> tuple[Reach, ...]:
     return tuple(Reach(*pair, *found.get(i, (None, None))) for i, pair in enumerate(asked))
 
 
-def places(found) -> np.ndarray:
-    """All places of reaches where a limit is met farthest out, (n, 3)."""
-    return np.array([place for reach in found for place in reach.places], dtype=float).reshape(-1, 3)
+def _elsewhere(found: Distance, words: str) -> list[str]:
+    """Other lobes that reach the limit about as far."""
+    if not found.islands:
+        return []
+    distances = [distance for distance, _ in found.islands]
+    return [
+        f"the limit is also reached {min(distances):.2f} to {max(distances):.2f} m {words} at "
+        f"{len(distances)} other places"
+    ]

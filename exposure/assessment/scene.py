@@ -9,7 +9,7 @@ from exposure.assessment.rules import populations, rule
 from exposure.assessment.strengths import FieldStrengths
 from exposure.errors import ExposureError
 from exposure.site.model import Site, Transmission
-from exposure.station.powers import Powers, powers
+from exposure.station.powers import powers
 from exposure.station.sources import GeometryError, Model, Source, SourceError, Sources
 
 GENERAL_PUBLIC = "general_public"
@@ -44,7 +44,9 @@ class Scene:
     @property
     def strengths(self) -> FieldStrengths:
         """Of all parts."""
-        wires = dict.fromkeys(axis for part in self.parts for axis in _axes(part.source.model.states[0].conductors))
+        wires = dict.fromkeys(
+            axis for part in self.parts for axis in _axes(part.source.model.states[0].conductors)
+        )
         shortest = min(part.source.model.wavelength for part in self.parts)
         return FieldStrengths(self.values, _arrays(wires), shortest)
 
@@ -112,8 +114,6 @@ def scene(site: Site, sources: Sources, progress) -> Scene:
     return Scene(site, tuple(parts), tuple(unsolved))
 
 
-
-
 def _cannot(antenna: str, frequency: float, error, model: Model | None) -> str:
     owners = "" if model is None else f"; conductors are numbered from 0: {_numbered(model)}"
     return f"antenna '{antenna}' at {frequency / 1e6:g} MHz cannot be modelled: {error}{owners}"
@@ -123,7 +123,9 @@ def _numbered(model: Model) -> str:
     spans = {}
     for number, piece in enumerate(model.pieces):
         spans.setdefault(piece.owner, []).append(number)
-    return ", ".join(f"{s[0]}-{s[-1]} '{owner}'" if len(s) > 1 else f"{s[0]} '{owner}'" for owner, s in spans.items())
+    return ", ".join(
+        f"{s[0]}-{s[-1]} '{owner}'" if len(s) > 1 else f"{s[0]} '{owner}'" for owner, s in spans.items()
+    )
 
 
 def _emission(transmission: Transmission, part: Part, column: int) -> Emission:

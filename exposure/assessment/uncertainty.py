@@ -9,15 +9,16 @@ from dataclasses import dataclass
 import numpy as np
 
 from exposure.assessment.ratios import Rule
-from exposure.station.sources import Source, solved
+from exposure.station.sources import Source, SourceError, solved
 
 LARGEST_CHANGE = 0.01  # in field, and of power in the balance (design, section 6)
 REFINED = 1.5  # segments of the finer mesh over those of the mesh in use
 # Convergence of order p leaves change / (1 - REFINED^-p) of error in the mesh in use; first order, the
 # slowest that a feed gap or a joint shows, leaves three times the change.
 REMAINING = 3.0
-MESHES = (None, 80.0, 160.0)  # segments a wavelength; None: the solver's own 40
-FINER = {None: 60.0, 80.0: 120.0, 160.0: 240.0}
+OWN_MESH = 40.0  # segments a wavelength of the solver where none are asked for (design, section 6)
+MESHES = (None, 80.0, 160.0)  # tried one after the other
+LEAST_STEP = 1.2  # in unknowns: wires too thick for shorter segments leave a mesh as it is
 
 
 @dataclass(frozen=True)
@@ -48,7 +49,7 @@ class Numerics:
         """Why it did not pass."""
         found = []
         if self.mesh_change is None:
-            found.append("no point could be compared on a finer mesh")
+            found.append("fields could not be compared on another mesh at any point that decides")
         elif not self.mesh_change <= LARGEST_CHANGE:
             found.append(f"fields move by {100 * self.mesh_change:.2g} % on a finer mesh; allowed is 1 %")
         if not abs(self.power_balance) <= LARGEST_CHANGE:
@@ -70,7 +71,10 @@ def numerics(source: Source, rules: tuple[Rule, ...], points, largest) -> Numeri
 
 
 def mesh_change(source: Source, rules, points, largest) -> float | None:
-    """Largest change in field, as a part of the whole field that decides, on a finer mesh. [1]"""
+    """Largest change in field, as a part of the whole field that decides, on another mesh. [1]
+
+    None where there is no point to compare at, or no other mesh.
+    """
     values = source.squared_strengths(points)
     usable = np.isfinite(values).all(axis=1)
     if not usable.any() or not any(rule.tests for rule in rules):
@@ -78,8 +82,10 @@ def mesh_change(source: Source, rules, points, largest) -> float | None:
     points, values = points[usable], values[usable]
     finer = values.copy()
     for state in _governing_states(rules, values):
-        fine = solved(source.of_state(state).model, FINER[source.segments_per_wavelength])
-        finer[:, 2 * state : 2 * state + 2] = fine.squared_strengths(points)
+        other = other_mesh(source.of_state(state))
+        if other is None:
+            return None
+        finer[:, 2 * state : 2 * state + 2] = other.squared_strengths(points)
     changes = [
         np.abs(np.sqrt(rule.ratio(finer)) - np.sqrt(rule.ratio(values)))
         / np.sqrt(np.maximum(np.maximum(whole[usable], rule.ratio(values)), 1e-300))
@@ -87,6 +93,22 @@ def mesh_change(source: Source, rules, points, largest) -> float | None:
         if rule.tests
     ]
     return float(np.max(changes))
+
+
+def other_mesh(source: Source) -> Source | None:
+    """The same on a finer mesh; on a coarser one, whose change is larger, where wires are too thick.
+
+    None where neither mesh differs enough to tell anything.
+    """
+    density = source.segments_per_wavelength or OWN_MESH
+    for step in (REFINED, 1 / REFINED):
+        try:
+            other = solved(source.model, density * step)
+        except SourceError:
+            continue
+        if max(other.unknowns / source.unknowns, source.unknowns / other.unknowns) >= LEAST_STEP:
+            return other
+    return None
 
 
 def _governing_states(rules, values) -> list[int]:

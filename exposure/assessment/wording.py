@@ -118,8 +118,8 @@ def _within(areas, property_) -> str:
         )
     if property_ is not None and property_.least_margin_m is not None:
         found.append(
-            f"where people stand, the limits of the general public are reached {property_.least_margin_m:.2f} m "
-            "inside the property, or more"
+            "where people stand, the limits of the general public are reached "
+            f"{property_.least_margin_m:.2f} m inside the property, or more"
         )
     elif property_ is not None:
         found.append("the limits of the general public are reached nowhere at 0-2 m above ground")
@@ -128,14 +128,24 @@ def _within(areas, property_) -> str:
 
 def conditions(site: Site, verdict: str, unguarded) -> tuple[str, ...]:
     """On what 'within limits' depends."""
-    if unguarded is None or verdict == EXCEEDS:
+    if verdict == EXCEEDS:
         return ()
+    found = [
+        f"only the people who were informed ({area.informed}) are in area '{area.name}' while transmitting: it "
+        "is judged by occupational levels"
+        for area in site.areas
+        if area.population == "occupational"
+    ]
+    return (*found, *([] if unguarded is None else [_keep_out(site, unguarded)]))
+
+
+def _keep_out(site: Site, zone) -> str:
     where = "on the property" if site.property_corners is not None else "around the antennas"
-    west, south, east, north = unguarded.bounds
+    west, south, east, north = zone.bounds
     return (
-        f"within limits provided nobody enters the drawn zone while transmitting: at 0-2 m above ground {where} "
-        f"the limits of the general public are reached over {unguarded.area:.3g} m2 (east {west:.1f} to "
-        f"{east:.1f} m, north {south:.1f} to {north:.1f} m)",
+        "within limits provided nobody enters the drawn zone while transmitting: at 0-2 m above ground "
+        f"{where} the limits of the general public are reached over {zone.area:.3g} m2 (east {west:.1f} to "
+        f"{east:.1f} m, north {south:.1f} to {north:.1f} m)"
     )
 
 
@@ -148,9 +158,9 @@ def choices(site: Site, decision: DecisionRule, factor: float, scene: Scene, rul
     )
     found = [
         decision.words(),
-        f"numerical error: exposure ratios may be {100 * (factor - 1):.2g} % too small ({REMAINING:g} times the "
-        "change of the fields on a finer mesh, and the power balance); soil, dimensions and powers are taken as "
-        "stated",
+        f"numerical error: exposure ratios may be {100 * (factor - 1):.2g} % too small ({REMAINING:g} times "
+        "the change of the fields on another mesh, and the power balance); soil, dimensions and powers are "
+        "taken as stated",
         body,
         "mismatch is not credited: the transmitter is taken to be tuned to give its full power",
         "each transmission takes its own worst window of each averaging time, also where all windows cannot "
@@ -170,12 +180,20 @@ def choices(site: Site, decision: DecisionRule, factor: float, scene: Scene, rul
 
 def warnings(site: Site, scene: Scene, zones: Zones) -> tuple[str, ...]:
     """Cautions about this site."""
-    found = [text for part in scene.parts for text in part.source.warnings]
+    found = [
+        f"antenna '{part.source.model.antenna}': {text}"
+        for part in scene.parts
+        for text in part.source.warnings
+    ]
     if site.place is None:
-        found.append("no [place] is stated: boundaries are in local coordinates only, boundaries.geojson is not made")
+        found.append(
+            "no [place] is stated: boundaries are in local coordinates only, boundaries.geojson is not made"
+        )
     for line, reach in zip(zones.lines, zones.reach, strict=True):
         if reach is None:
-            found.append(f"{line.limits}, {line.population}, {line.transmission}: the boundary was not seen to end")
+            found.append(
+                f"{line.limits}, {line.population}, {line.transmission}: the boundary was not seen to end"
+            )
     without = [limits for limits in site.limits if GENERAL_PUBLIC not in populations(limits)]
     found += [f"{limits} has no levels for the general public" for limits in without]
     if site.ground.kind == "none":

@@ -109,7 +109,11 @@ def _different(scene: Scene, asked) -> tuple[Line, ...]:
 
 
 def _boundaries(asked, different, found, **plane):
-    known = {(x.limits, x.population, x.transmission): p for x, p in zip(different, found, strict=True) if not x.raised}
+    known = {
+        (x.limits, x.population, x.transmission): p
+        for x, p in zip(different, found, strict=True)
+        if not x.raised
+    }
     for line in asked:
         if not line.raised:
             own = (line.limits, line.population, line.transmission)

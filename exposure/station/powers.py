@@ -126,5 +126,8 @@ def _pattern(transmission: Transmission) -> str:
 
 def _instantaneous(accepted: float) -> Step:
     return Step(
-        "instantaneous tests: at peak envelope, no duty factor", 1.0, accepted, "averaging time 0 in the document"
+        "instantaneous tests: at peak envelope, no duty factor",
+        1.0,
+        accepted,
+        "averaging time 0 in the document",
     )

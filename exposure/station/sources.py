@@ -34,7 +34,10 @@ class State:
 
 @dataclass(frozen=True)
 class Piece:
-    """A conductor for drawings: owner's name, role ("antenna", "structure", "feed line"), axis [m], radius [m]."""
+    """A conductor for drawings: its owner's name, its axis and radius [m].
+
+    role : "antenna", "structure" or "feed line".
+    """
 
     owner: str
     role: str
@@ -190,7 +193,9 @@ def model(transmission: Transmission, site: Site) -> Model:
 def squared_strengths(currents, points) -> np.ndarray:
     """(n, 2) E^2 [V^2/m^2] and H^2 [A^2/m^2] of currents at points (n, 3) [m]; inf where none is given."""
     points = np.asarray(points, dtype=float).reshape(-1, 3)
-    parts = [_strengths(currents, points[i : i + POINTS_AT_ONCE]) for i in range(0, len(points), POINTS_AT_ONCE)]
+    parts = [
+        _strengths(currents, points[i : i + POINTS_AT_ONCE]) for i in range(0, len(points), POINTS_AT_ONCE)
+    ]
     return np.concatenate(parts) if parts else np.zeros((0, 2))
 
 

@@ -54,8 +54,8 @@ def surroundings(site: Site, antenna: str, own, frequency: float, wavelength: fl
         distance = nearest(wiring.conductors, own, site.areas)
         if distance > reach:
             left_out.append(
-                f"{role} '{name}' at {frequency / 1e6:g} MHz: {distance:.1f} m or more from antenna '{antenna}' "
-                f"and from every area, farther than {reach:.1f} m"
+                f"{role} '{name}' at {frequency / 1e6:g} MHz: {distance:.1f} m or more from antenna "
+                f"'{antenna}' and from every area, farther than {reach:.1f} m"
             )
         else:
             kept.append((name, role, wiring))
