@@ -173,10 +173,10 @@ def test_short_dipole_has_the_field_of_the_exact_spectrum(frequency, soil, heigh
 @pytest.mark.parametrize("frequency", [1.8, 3.6, 14.2, 28.0, 50.0, 146.0])
 @pytest.mark.parametrize("height", [0.02, 0.5, 5.0, 20.0])
 def test_short_dipole_everywhere_over_every_soil(frequency, soil, height, vertical):
-    """As above, at 0.1, 1, 8 and 60 m in plan; 3e-3, the promise of docs/accuracy.md."""
-    for distance, z in ((0.1, 0.02), (1.0, 1.0), (8.0, 0.3), (60.0, 2.0)):
+    """As above, at 0.1, 1, 8, 60 m in plan; 3e-4: the total may be a hundred times less than its parts."""
+    for distance, z in ((0.1, 0.02), (1.0, 1.0), (8.0, 1.0), (60.0, 2.0)):
         point = (0.8 * distance, 0.6 * distance, z)
-        assert largest_error(1e6 * frequency, soil, vertical, height, point) < 3e-3
+        assert largest_error(1e6 * frequency, soil, vertical, height, point) < 3e-4
 
 
 def by_layered_earth_package(frequency, soil, vertical, height, point):
