@@ -5,6 +5,7 @@ from functools import cached_property
 
 import numpy as np
 
+from fieldsolver.emitters import emitters, ground_charges, smooth
 from fieldsolver.errors import SolutionError
 from fieldsolver.far_field import radiated_power
 from fieldsolver.ground_loss import ground_loss
@@ -63,6 +64,21 @@ class Currents:
         if not power > 0:
             raise SolutionError(f"the feeds together accept {power:.4g} W: there must be more than zero")
         return power
+
+    @cached_property
+    def emitters(self):
+        """Wires and images, ready for the near field."""
+        return emitters(self.problem, self.ends)
+
+    @cached_property
+    def ground_charges(self):
+        """Charges of ends on real ground, ready for the near field."""
+        return ground_charges(self.problem, self.ends)
+
+    @cached_property
+    def smooth(self):
+        """What the rest of a real ground sees of the currents."""
+        return smooth(self.problem, self.ends)
 
     @cached_property
     def radiated_power(self) -> float:

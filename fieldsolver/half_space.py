@@ -12,6 +12,7 @@ import numpy as np
 from scipy import sparse
 
 from fieldsolver.constants import FREE_SPACE_IMPEDANCE, SPEED_OF_LIGHT
+from fieldsolver.emitters import Smooth
 from fieldsolver.ground import LossyGround
 from fieldsolver.ground_ends import GroundEnds
 from fieldsolver.images import Image, image
@@ -81,28 +82,23 @@ class HalfSpace:
         rest = self.reflection.potentials(flat, 0 * flat)["k_phi"]
         return both * wave + rest.reshape(distance.shape)
 
-    def fields(self, mesh, ends, points, ground: GroundEnds):
-        """E (n, 3) [V/m] and H (n, 3) [A/m] of the rest at points (n, 3), for end currents (2S,)."""
-        few = pieces(mesh, self.k)
-        moment = (few.moment @ ends)[:, None] * few.tangents
-        sources = np.concatenate([few.points, ground.points])
-        moment = np.concatenate([moment, np.zeros_like(ground.points)])
-        slope = np.concatenate([few.slope @ ends, ground.slopes @ ends])
-        rows = max(1, PAIRS // len(sources))
-        parts = [
-            self._fields(points[i : i + rows], sources, moment, slope) for i in range(0, len(points), rows)
-        ]
+    def fields(self, points, sources: Smooth):
+        """E (n, 3) [V/m] and H (n, 3) [A/m] of the rest at points (n, 3)."""
+        rows = max(1, PAIRS // len(sources.points))
+        parts = [self._fields(points[i : i + rows], sources) for i in range(0, len(points), rows)]
         return tuple(np.concatenate(fields) for fields in zip(*parts, strict=True))
 
-    def _fields(self, points, sources, moment, slope):
-        shape = (len(points), len(sources))
-        rho, zeta, unit = _cylinder(np.repeat(points, shape[1], axis=0), np.tile(sources, (shape[0], 1)))
+    def _fields(self, points, sources):
+        shape = (len(points), len(sources.points))
+        rho, zeta, unit = _cylinder(
+            np.repeat(points, shape[1], axis=0), np.tile(sources.points, (shape[0], 1))
+        )
         rest = {name: values.reshape(shape) for name, values in self.reflection.fields(rho, zeta).items()}
         x, y = unit[:, 0].reshape(shape), unit[:, 1].reshape(shape)
         f_over_rho = rest["f_rho_over_rho"]
         f_rho = f_over_rho * rho.reshape(shape)
-        mx, my, mz = moment.T
-        charge = slope / self.k**2
+        mx, my, mz = sources.moments.T
+        charge = sources.slopes / self.k**2
         electric = [
             rest["k_xx"] @ mx - (f_rho * x) @ mz + (rest["k_phi_rho"] * x) @ charge,
             rest["k_xx"] @ my - (f_rho * y) @ mz + (rest["k_phi_rho"] * y) @ charge,

@@ -11,11 +11,11 @@ import numpy as np
 
 from fieldsolver.clearances import axis_distances
 from fieldsolver.constants import FREE_SPACE_IMPEDANCE
+from fieldsolver.emitters import Emitter
 from fieldsolver.errors import PointError
 from fieldsolver.ground import FreeSpace
-from fieldsolver.images import MIRROR
 from fieldsolver.kernels import gauss
-from fieldsolver.radiation import Elements, fields_of_elements
+from fieldsolver.radiation import CELLS, fields_of_elements
 
 RADII = 3.0
 GROUP = 64
@@ -51,13 +51,10 @@ def near_field(currents, points) -> Field:
     points = np.asarray(points, dtype=float).reshape(-1, 3)
     problem = currents.problem
     _check(points, problem)
-    wires = _source(problem.mesh, currents.ends)
-    parts = [_fields(problem.k, points, wires)]
-    if problem.image is not None:
-        parts.append(_fields(problem.k, points, wires.mirrored(problem.image)))
+    parts = [_fields(problem.k, points, emitter) for emitter in currents.emitters]
     if problem.half_space is not None:
-        parts.append(_ground_ends(problem, points, currents.ends))
-        parts.append(problem.half_space.fields(problem.mesh, currents.ends, points, problem.ground_ends))
+        parts.append(fields_of_elements(problem.k, points, currents.ground_charges))
+        parts.append(problem.half_space.fields(points, currents.smooth))
     return Field(*(sum(fields) for fields in zip(*parts, strict=True)))
 
 
@@ -77,99 +74,32 @@ def _check(points, problem):
         )
 
 
-@dataclass(frozen=True)
-class _Source:
-    """Segments carrying currents: start, vector (S, 3); currents (S, 2); tensors that E and H see."""
-
-    start: np.ndarray
-    vector: np.ndarray
-    currents: np.ndarray
-    tangent: np.ndarray
-    electric: np.ndarray
-    magnetic: np.ndarray
-    charge: complex
-
-    @property
-    def length(self) -> np.ndarray:
-        return np.linalg.norm(self.vector, axis=1)
-
-    def mirrored(self, image) -> "_Source":
-        return _Source(
-            self.start * MIRROR,
-            self.vector * MIRROR,
-            self.currents,
-            self.tangent,
-            image.tensor,
-            image.magnetic_tensor,
-            image.charge,
-        )
-
-    def elements(self, fraction, weight, segment) -> Elements:
-        """Elements at fractions (..., q) of segments (...), flattened."""
-        current = (
-            self.currents[segment, 0, None] * (1 - fraction) + self.currents[segment, 1, None] * fraction
-        )
-        moment = (current * weight * self.length[segment, None])[..., None] * self.tangent[segment, None, :]
-        slope = (self.currents[segment, 1] - self.currents[segment, 0])[:, None] * weight * self.charge
-        points = self.start[segment, None] + fraction[..., None] * self.vector[segment, None]
-        return Elements(
-            points.reshape(-1, 3),
-            (moment * self.electric).reshape(-1, 3),
-            (moment * self.magnetic).reshape(-1, 3),
-            slope.reshape(-1),
-        )
-
-
-def _source(mesh, ends) -> _Source:
-    one = np.ones(3)
-    return _Source(mesh.start, mesh.end - mesh.start, ends.reshape(-1, 2), mesh.tangent, one, one, 1.0)
-
-
-def _fields(k, points, source: _Source):
+def _fields(k, points, source: Emitter):
     electric = np.zeros((len(points), 3), complex)
     magnetic = np.zeros((len(points), 3), complex)
-    everything = np.arange(len(source.start))
-    coarse, fine = (source.elements(*_rule(q, len(everything)), everything) for q in (2, 4))
-    for group in _groups(points):
+    for group in _groups(points, max(GROUP, CELLS // len(source.start))):
         at = points[group]
         centre = (at.min(axis=0) + at.max(axis=0)) / 2
         reach = np.linalg.norm(at - centre, axis=1).max()
-        distance = axis_distances(
-            centre[None], np.stack([source.start, source.start + source.vector], axis=1)
-        )[0][0]
-        near = distance - reach < FAR * source.length
-        far = np.flatnonzero(~near)
-        e, h = fields_of_elements(k, at, coarse[_expand(far, 2)])
+        near = axis_distances(centre[None], source.axes)[0][0] - reach < FAR * source.length
+        e, h = fields_of_elements(k, at, source.coarse[_expand(np.flatnonzero(~near), 2)])
         if near.any():
-            for field, part in zip((e, h), _near(k, at, source, fine, np.flatnonzero(near)), strict=True):
+            for field, part in zip((e, h), _near(k, at, source, np.flatnonzero(near)), strict=True):
                 field += part
         electric[group], magnetic[group] = e, h
     return electric, magnetic
-
-
-def _ground_ends(problem, points, ends):
-    """Fields of the charges where wires end on real ground, with their images."""
-    at = problem.ground_ends.points
-    slopes = (1 + problem.image.charge) * (problem.ground_ends.slopes @ ends)
-    nothing = np.zeros((len(at), 3))
-    return fields_of_elements(problem.k, points, Elements(at, nothing, nothing, slopes))
-
-
-def _rule(count, segments):
-    nodes, weights = gauss(count)
-    return np.tile(nodes, (segments, 1)), np.tile(weights, (segments, 1))
 
 
 def _expand(segments, count):
     return (segments[:, None] * count + np.arange(count)).reshape(-1)
 
 
-def _groups(points):
+def _groups(points, size):
     """Index arrays of neighbouring points, from halving along the longest side."""
     stack, groups = [np.arange(len(points))], []
     while stack:
         index = stack.pop()
-        if len(index) <= GROUP:
+        if len(index) <= size:
             groups.append(index)
             continue
         axis = int(np.argmax(np.ptp(points[index], axis=0)))
@@ -178,12 +108,13 @@ def _groups(points):
     return [group for group in groups if len(group)]
 
 
-def _near(k, at, source, fine, segments):
+def _near(k, at, source, segments):
     """Fields of the segments near a group of points."""
-    axes = np.stack([source.start[segments], source.start[segments] + source.vector[segments]], axis=1)
-    distance, _ = axis_distances(at, axes)
+    distance, _ = axis_distances(at, source.axes[segments])
     close = distance < NEAR * source.length[segments]
-    electric, magnetic = fields_of_elements(k, at, fine[_expand(segments, 4)], np.repeat(close, 4, axis=1))
+    electric, magnetic = fields_of_elements(
+        k, at, source.fine[_expand(segments, 4)], np.repeat(close, 4, axis=1)
+    )
     point, local = np.nonzero(close)
     if len(point):
         e, h = _singly(k, at[point], source, segments[local], distance[point, local])
