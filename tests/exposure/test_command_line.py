@@ -1,6 +1,7 @@
 """The command: exit codes, messages without tracebacks, and what each verb loads."""
 
 import json
+import math
 import os
 import signal
 import subprocess
@@ -11,6 +12,9 @@ from pathlib import Path
 import pytest
 
 from exposure.command_line import VERBS, main
+from exposure.site.site_file import read_site
+from exposure.station.powers import powers
+from exposure.station.sources import source
 from tests.exposure.broken_cases import CASES, expected
 from tests.exposure.stations import DRAWN, FENCE, STATION, VERTICAL, changed
 
@@ -261,3 +265,94 @@ def test_a_frequency_on_which_lengths_are_derived_is_said(tmp_path, capsys):
     main(["check", str(path)])
 
     assert "note: length 10.05 m derived" in capsys.readouterr().out
+
+
+SMALL = changed('soil = "average"', 'kind = "perfect"').replace(
+    "corners_m = [[18, -4], [26, -4], [26, 4], [18, 4]]\nbottom_m = 2.8\ntop_m = 4.8\n",
+    "point_m = [18, 0, 3.8]\n",
+)
+SMALL = SMALL.replace("[property]\ncorners_m = [[-15, -20], [15, -20], [15, 20], [-15, 20]]\n", "")
+VERDICTS = {
+    # 100 W at 13 m from a wire end: a few V/m, the level is 58 V/m
+    "within limits": (SMALL, 0),
+    # a point 0.1 m below the wire
+    "exceeds limits": (SMALL.replace("[18, 0, 3.8]", "[4.9, 0, 9.0]"), 1),
+    # nobody is anywhere
+    "cannot be decided": (SMALL[: SMALL.index("[[area]]")], 3),
+}
+
+
+@pytest.mark.parametrize("verdict", VERDICTS)
+def test_assess_ends_with_the_code_of_its_verdict_and_writes_its_files(verdict, tmp_path, capsys):
+    text, expected_code = VERDICTS[verdict]
+    path, results = tmp_path / "lot.toml", tmp_path / "out" / "lot"
+    path.write_text(text)
+
+    code = main(["assess", str(path), "-o", str(results), "--json"])
+
+    told = json.loads(capsys.readouterr().out)
+    assert (code, told["verdict"]) == (expected_code, verdict)
+    assert json.loads((results / "assessment.json").read_text())["verdict"] == verdict
+    assert (results / "report.pdf").read_bytes().startswith(b"%PDF")
+    assert sorted(entry.name for entry in results.iterdir()) == ["assessment.json", "figures", "report.pdf"]
+    assert [entry.name for entry in results.parent.iterdir()] == ["lot"]
+
+
+def test_assess_tells_before_the_long_work_that_its_place_is_a_file(tmp_path, capsys):
+    path, results = tmp_path / "lot.toml", tmp_path / "taken"
+    path.write_text(SMALL)
+    results.write_text("mine")
+
+    code = main(["assess", str(path), "-o", str(results)])
+
+    assert code == 2 and "is a file" in capsys.readouterr().err
+    assert results.read_text() == "mine"
+
+
+def test_the_report_is_made_again_from_the_result_alone(tmp_path, capsys):
+    path, results = tmp_path / "lot.toml", tmp_path / "lot"
+    path.write_text(SMALL)
+    main(["assess", str(path), "-o", str(results)])
+    first = (results / "report.pdf").read_bytes()
+    path.unlink()
+
+    code = main(["report", str(results / "assessment.json")])
+
+    assert code == 0
+    assert (results / "report.pdf").read_bytes() == first
+
+
+def test_a_field_at_a_point_is_that_of_the_solver(tmp_path, capsys):
+    """The same currents asked directly, at 100 W less the credited line loss; equal to rounding, 1e-9."""
+    path = tmp_path / "lot.toml"
+    path.write_text(SMALL)
+    site = read_site(path)
+    sent = site.transmissions[0]
+    accepted = powers(sent).accepted
+    electric = math.sqrt(source(sent, site).squared_strengths([(18, 0, 3.8)])[0, 0] * accepted)
+
+    code = main(["field", str(path), "--point", "18", "0", "3.8", "--json"])
+
+    (told,) = json.loads(capsys.readouterr().out)
+    assert code == 0
+    assert told["fields"][0]["electric_v_per_m"] == pytest.approx(electric, rel=1e-9)
+    assert {ratio["limits"] for ratio in told["ratios"]} == {"us_fcc", "icnirp_2020"}
+
+
+def test_a_field_inside_a_conductor_is_unknown_with_its_reason(tmp_path, capsys):
+    path = tmp_path / "lot.toml"
+    path.write_text(SMALL)
+
+    main(["field", str(path), "--point", "2", "0", "9.1", "--json"])
+
+    (told,) = json.loads(capsys.readouterr().out)
+    assert told["fields"][0]["electric_v_per_m"] is None
+    assert "three radii" in told["reason"]
+
+
+def test_a_point_below_the_ground_is_bad_input(tmp_path, capsys):
+    path = tmp_path / "lot.toml"
+    path.write_text(SMALL)
+
+    assert main(["field", str(path), "--point", "2", "0", "-1"]) == 2
+    assert "below the ground" in capsys.readouterr().err
