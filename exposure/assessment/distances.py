@@ -19,7 +19,10 @@ FARTHEST = 1000.0  # m; beyond it a distance is called unbounded
 NEAREST = 0.001  # m; shells do not go nearer to an axis
 NEAREST_ASIDE = 0.05  # m, in plan
 REACH_MARGIN = 1.03  # on the compliance distance where it bounds another search
-QUIET = 0.1  # ratio that ends the way outwards, and below which shells may be coarse
+QUIET = 0.1  # ratio that ends the way outwards
+# samples may be wider apart by the second number while the greatest ratio of a shell is below the
+# first of the row above: no fringe is that many times higher than all the samples of its shell
+COARSE = ((0.25, 1.0), (0.05, 2.0), (0.0, 3.0))
 STEP = 0.25  # of the distance from shell to shell
 OVERSHOOT = 1.3  # a lobe may be that much higher than its highest sample
 LEAST_SEED = 0.5  # ratio; a power of distance is not trusted further than that
@@ -95,7 +98,7 @@ class _Search:
         distance = max(0.5 * self.strengths.wavelength, self.extent)
         before = np.inf
         while distance < farthest:
-            _, ratios = self._shell(distance, 1.0)
+            _, ratios = self._shell(distance, COARSE[1][1])
             most = ratios.max()
             if most <= QUIET and before <= QUIET:
                 return distance
@@ -107,7 +110,7 @@ class _Search:
         """Shells from `outer` until every ratio function has reached one."""
         found = [None] * len(self.ratios)
         seen = []
-        distance, coarse = outer, 2.0
+        distance, coarse = outer, COARSE[-1][1]
         while distance >= self.nearest and any(f is None for f in found):
             points, ratios = self._shell(distance, coarse)
             if len(points):
@@ -117,7 +120,7 @@ class _Search:
                         found[i] = self._unbounded() if distance >= farthest else self._locate(i, seen)
             open_ = [i for i, f in enumerate(found) if f is None]
             most = max((ratios[i].max() for i in open_), default=0.0) if len(points) else 0.0
-            coarse = 2.0 if most < QUIET else 1.0
+            coarse = next(wide for least, wide in COARSE if most >= least)
             distance = self._next(distance, coarse)
         return tuple(f if f is not None else Distance(0.0, None, (), True) for f in found)
 
@@ -151,11 +154,21 @@ class _Search:
         hopeful = (ratios > LEAST_SEED) & (reached * OVERSHOOT ** (1 / slope) >= reached[ratios >= 1].max())
         seeds = self._apart(points[hopeful], distances[hopeful], reached[hopeful])
         first = sorted((self._climb(i, point, BOXES[0] * d) for point, d in seeds), key=lambda f: -f[1])
-        best = self._finer(i, *first[0], slope)
+        known = int(np.argmax(np.where(ratios >= 1, distances, 0.0)))
+        if not np.isfinite(ratios[known]):
+            return self._contact(points[known], distances[known], seen)
+        best = self._finer(i, *first[0], slope) if first[0][1] > 0 else (0.0, points[known])
+        if best[0] < distances[known]:
+            best = (distances[known], points[known])
         islands = tuple(
             (float(d), _place(p)) for p, d in first[1:] if np.linalg.norm(p - best[1]) > 0.5 * d > 0
         )
         return Distance(float(best[0]), _place(best[1]), islands, True)
+
+    def _contact(self, point, distance, seen):
+        """The ratio reaches one only within three radii: the next shell outside is an upper bound."""
+        outside = max(seen[-2][1].min(), distance) if len(seen) > 1 else distance
+        return Distance(float(outside), _place(point), (), True)
 
     def _slope(self, i, seen):
         """Power of distance with which ratio i falls between the last two shells, 2 to 6."""

@@ -156,3 +156,16 @@ def test_all_searches_of_a_garden_station_within_their_points():
         greatest(field, limits, Prism(outline, bottom, top))
 
     assert field.values.points < 34_000
+
+
+@pytest.mark.parametrize("current", [1e-4, 1e-3, 1e-2, 0.05])
+def test_however_weak_the_field_the_distance_is_three_radii(current):
+    """Points within 3 mm, three radii, are infinite: the distance is at least that, and errs outwards."""
+    field = strengths(garden(current=current), [GARDEN_WIRE])
+
+    found = compliance_distances(field, LIMITS[:1])[0]
+
+    assert 0.003 * (1 - RELATIVE) <= found.distance < 0.5
+    outside = around(field, 1.02 * found.distance, 0.3 * found.distance)
+    beyond = field.distance(outside) > found.distance * (1 + RELATIVE)
+    assert np.all(LIMITS[0](field.values(outside[beyond])) < 1)
