@@ -19,7 +19,7 @@ from fieldsolver.images import Image, image
 from fieldsolver.pieces import pieces
 from fieldsolver.reflection import Reflection
 
-PAIRS = 1 << 15
+PAIRS = 1 << 17
 
 
 @dataclass(frozen=True)
