@@ -13,13 +13,15 @@ from exposure.assessment.judged_property import judged_property, unguarded_zone
 from exposure.assessment.model import Assessment, Software
 from exposure.assessment.ratios import Rule
 from exposure.assessment.reach import Reach, reaches
-from exposure.assessment.scene import Scene, own_rule, scene
+from exposure.assessment.scene import Part, Scene, own_rule, scene
 from exposure.assessment.transmissions import transmission_findings
 from exposure.assessment.uncertainty import MESHES, Numerics, numerics
 from exposure.assessment.verdict import UNDECIDED, DecisionRule, worst
 from exposure.assessment.zones import Zones, heights_of, lines, zones
 from exposure.site.model import Site
 from exposure.station.sources import SourceError, Sources
+
+REACTIVE = 0.1  # wavelengths: nearer than four segments the field is that of single segments
 
 
 def assess(site: Site, progress=None) -> Assessment:
@@ -95,7 +97,7 @@ def _searched(scene_: Scene, progress) -> Found:
     progress("quality of the solution")
     points = _deciding_points(scene_, areas)
     quality = tuple(
-        _numerics(scene_, rules, part, np.concatenate([points, _places(found)]))
+        _numerics(scene_, rules, part, _with_reach(points, part, found))
         for part, found in zip(scene_.parts, distances, strict=True)
     )
     return Found(scene_, rules, distances, tuple(areas), quality)
@@ -122,8 +124,14 @@ def _deciding_points(scene_: Scene, areas) -> np.ndarray:
     return np.array(list(dict.fromkeys(found)), dtype=float).reshape(-1, 3)
 
 
-def _places(found: tuple[Reach, ...]) -> np.ndarray:
-    return np.array([place for reach in found for place in reach.places], dtype=float).reshape(-1, 3)
+def _with_reach(points, part: Part, found: tuple[Reach, ...]) -> np.ndarray:
+    """And where the limit is reached, unless that is so near to the wires that no verdict hangs on it."""
+    for beyond in (REACTIVE * part.source.model.wavelength, 0.0):
+        places = [place for reach in found for place in reach.places(beyond)]
+        points = np.concatenate([points, np.array(places, dtype=float).reshape(-1, 3)])
+        if len(points):
+            break
+    return points
 
 
 def _numerics(scene_: Scene, rules, part, points) -> Numerics:
@@ -178,4 +186,7 @@ def _zones(found: Found, raised: float, progress) -> Zones:
         for area in found.areas
         if any(e is not None for e in area.exposures)
     ]
-    return zones(found.scene, lines(found.rules, names, raised), heights_of(found.scene, worst_heights))
+    strengths = found.scene.loud_strengths(found.rules, raised)
+    return zones(
+        found.scene, strengths, lines(found.rules, names, raised), heights_of(found.scene, worst_heights)
+    )

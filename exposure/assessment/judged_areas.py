@@ -103,8 +103,8 @@ def _too_near(scene: Scene, area: Area):
         own = part.source.model.own
         if nearest(own, own[:0], (area,)) < NEAREST:
             yield (
-                f"part of it is within {100 * NEAREST:.0f} cm of antenna '{part.source.model.antenna}', where levels "
-                "of the undisturbed field do not stand for what a body absorbs"
+                f"part of it is within {100 * NEAREST:.0f} cm of antenna '{part.source.model.antenna}', "
+                "where levels of the undisturbed field do not stand for what a body absorbs"
             )
 
 

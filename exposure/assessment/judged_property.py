@@ -32,7 +32,7 @@ def judged_property(scene: Scene, rules: tuple[Rule, ...], zones: Zones, doubts)
     if not inside:
         reason = f"at 0-2 m above ground the limit is reached up to {-margin:.2f} m beyond the property"
         return PropertyFinding(tuple(corners), False, False, margin, reason), EXCEEDS
-    everywhere = _at_all_heights(scene, outline, zones)
+    everywhere = _at_all_heights(outline, zones)
     reason = "" if margin is not None else "the limit is reached nowhere at 0-2 m above ground"
     if doubts:
         return PropertyFinding(tuple(corners), None, None, margin, "; ".join(doubts)), UNDECIDED
@@ -41,10 +41,7 @@ def judged_property(scene: Scene, rules: tuple[Rule, ...], zones: Zones, doubts)
 
 def line_error(zones: Zones) -> float:
     """How far a judged boundary may be from where it was drawn. [m]"""
-    farthest = max(
-        (r for line, r in zip(zones.lines, zones.reach, strict=True) if line.raised and r), default=0.0
-    )
-    return LINE_ERROR * farthest
+    return LINE_ERROR * zones.farthest
 
 
 def _margin(outline, zone, error: float) -> float | None:
@@ -58,16 +55,12 @@ def _margin(outline, zone, error: float) -> float | None:
     return float(zone.distance(outline.exterior)) - error
 
 
-def _at_all_heights(scene: Scene, outline, zones: Zones) -> bool | None:
+def _at_all_heights(outline, zones: Zones) -> bool | None:
     """Yes where all space within reach of the wires is above the property; no where a drawn plane says so."""
     if not zones.elsewhere.difference(outline).is_empty:
         return False
-    farthest = max(
-        (r for line, r in zip(zones.lines, zones.reach, strict=True) if line.raised and r), default=0.0
-    )
-    starts, ends = scene.strengths.segments
-    wires = shapely.MultiLineString([(a[:2], b[:2]) for a, b in zip(starts, ends, strict=True)])
-    return True if outline.contains(wires.buffer(farthest * (1 + LINE_ERROR) + 1e-6)) else None
+    grown = zones.wires.buffer(zones.farthest + line_error(zones) + 1e-6)
+    return True if outline.contains(grown) else None
 
 
 def unguarded_zone(scene: Scene, zones: Zones):

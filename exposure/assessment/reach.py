@@ -36,9 +36,10 @@ class Reach:
             "; ".join(notes),
         )
 
-    @property
-    def places(self) -> list:
-        """Where the limit is reached farthest out."""
+    def places(self, beyond: float) -> list:
+        """Where the limit is reached farthest out, as far as that is beyond a distance [m] of the wires."""
+        if self.compliance is None or not (self.compliance.distance or 0.0) > beyond:
+            return []
         found = [d.position for d in (self.compliance, self.setback) if d is not None]
         return [place for place in found if place is not None]
 
@@ -65,6 +66,6 @@ def _elsewhere(found: Distance, words: str) -> list[str]:
         return []
     distances = [distance for distance, _ in found.islands]
     return [
-        f"the limit is also reached {min(distances):.2f} to {max(distances):.2f} m {words} at "
-        f"{len(distances)} other places"
+        f"the limit is also reached at other places, about {min(distances):.2g} to "
+        f"{max(distances):.2g} m {words}"
     ]

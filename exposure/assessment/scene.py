@@ -10,9 +10,11 @@ from exposure.assessment.strengths import FieldStrengths
 from exposure.errors import ExposureError
 from exposure.site.model import Site, Transmission
 from exposure.station.powers import powers
-from exposure.station.sources import GeometryError, Model, Source, SourceError, Sources
+from exposure.station.sources import GeometryError, Model, Piece, Source, SourceError, Sources, reach_of_touch
 
 GENERAL_PUBLIC = "general_public"
+PIECE = 0.25  # m, of other metal looked at on its own
+LOUD = 0.5  # exposure ratio beside a piece, half of what would make a boundary there
 
 
 @dataclass(frozen=True)
@@ -50,6 +52,30 @@ class Scene:
         shortest = min(part.source.model.wavelength for part in self.parts)
         return FieldStrengths(self.values, _arrays(wires), shortest)
 
+    def loud_strengths(self, rules, factor: float) -> FieldStrengths:
+        """The same for boundaries: of other metal only pieces beside which a limit may be reached.
+
+        Around the rest the field is below every limit, so that no boundary is there.
+        """
+        wires = dict.fromkeys(
+            axis
+            for part in self.parts
+            for axis in (*_axes(part.source.model.own), *self._loud(part, rules, factor))
+        )
+        return replace(self.strengths, conductors=_arrays(wires))
+
+    def _loud(self, part: Part, rules, factor: float):
+        transmitting = {p.source.model.antenna for p in self.parts}
+        pieces = [p for p in part.source.model.pieces if p.owner not in transmitting]
+        if not pieces:
+            return
+        axes, places = zip(*(pair for piece in pieces for pair in _beside(piece)), strict=True)
+        values = self.values(np.concatenate(places))
+        ratio = np.max([rule.ratio(values) for rule in rules if rule.tests], axis=0, initial=0.0)
+        for axis, most in zip(axes, ratio.reshape(len(axes), -1).max(axis=1), strict=True):
+            if factor * most >= LOUD:
+                yield axis
+
     @property
     def emissions(self) -> tuple[Emission, ...]:
         """Of all solved transmissions, in the order of the file."""
@@ -74,6 +100,24 @@ class Scene:
         parts = list(self.parts)
         parts[index] = replace(parts[index], source=source)
         return replace(self, parts=tuple(parts))
+
+
+def _beside(piece: Piece):
+    """Short pieces of a conductor, each with places on four sides of its middle, as near as touching."""
+    start, end = np.asarray(piece.points)
+    along = end - start
+    count = max(1, int(np.ceil(np.linalg.norm(along) / PIECE)))
+    unit = along / np.linalg.norm(along)
+    first = np.cross(unit, [0.0, 0.0, 1.0] if abs(unit[2]) < 0.9 else [1.0, 0.0, 0.0])
+    first /= np.linalg.norm(first)
+    around = reach_of_touch(piece.radius) * np.array(
+        [first, -first, np.cross(unit, first), -np.cross(unit, first)]
+    )
+    for i in range(count):
+        low, high = (start + (i + j) / count * along for j in (0, 1))
+        places = 0.5 * (low + high) + around
+        places[:, 2] = np.maximum(places[:, 2], 0.0) if min(start[2], end[2]) >= 0 else places[:, 2]
+        yield (tuple(low), tuple(high)), places
 
 
 def own_strengths(part: Part) -> FieldStrengths:

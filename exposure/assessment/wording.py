@@ -131,8 +131,8 @@ def conditions(site: Site, verdict: str, unguarded) -> tuple[str, ...]:
     if verdict == EXCEEDS:
         return ()
     found = [
-        f"only the people who were informed ({area.informed}) are in area '{area.name}' while transmitting: it "
-        "is judged by occupational levels"
+        f"only the people who were informed ({area.informed}) are in area '{area.name}' while transmitting: "
+        "it is judged by occupational levels"
         for area in site.areas
         if area.population == "occupational"
     ]
@@ -168,7 +168,9 @@ def choices(site: Site, decision: DecisionRule, factor: float, scene: Scene, rul
         "of transmissions that exclude each other the worst counts, at each place",
         "of an antenna's possible states (feed line with and without choke, other antennas' feeds open and "
         "short) the worst counts, at each place",
-        "within three radii of a conductor the limit is taken to be exceeded",
+        "within three radii of an antenna's conductor the limit is taken to be exceeded",
+        "nearer than 5 cm, or three radii, to other metal the field just there counts: touching it is not "
+        "assessed",
         "where only a power density is given, the larger of E^2/377 ohm and 377 ohm H^2 is compared with it",
     ]
     if site.property_corners is not None:

@@ -10,6 +10,7 @@ from exposure.assessment.distances import compliance_distances
 from exposure.assessment.model import Boundary, Polygon
 from exposure.assessment.ratios import Rule
 from exposure.assessment.scene import GENERAL_PUBLIC, Scene
+from exposure.assessment.strengths import FieldStrengths
 
 STANDING = (0.0, 2.0)  # m above ground, where people stand
 ALL = "all"
@@ -52,13 +53,23 @@ def _raised(rule: Rule, factor: float):
 
 @dataclass(frozen=True)
 class Zones:
-    """Lines with their reach [m], and what was drawn: boundaries, and the judged polygons by height."""
+    """Lines with their reach [m], and what was drawn: boundaries, and the judged polygons.
+
+    wires : plan of the conductors that the reach is measured from.
+    """
 
     lines: tuple[Line, ...]
     reach: tuple
     boundaries: tuple[Boundary, ...]
     standing: shapely.Geometry
     elsewhere: shapely.Geometry
+    wires: shapely.Geometry = shapely.GeometryCollection()
+
+    @property
+    def farthest(self) -> float:
+        """Reach of the judged lines. [m]"""
+        judged = (r for line, r in zip(self.lines, self.reach, strict=True) if line.raised)
+        return max((r for r in judged if r), default=0.0)
 
     @property
     def bounded(self) -> bool:
@@ -66,9 +77,8 @@ class Zones:
         return all(r is not None for line, r in zip(self.lines, self.reach, strict=True) if line.raised)
 
 
-def zones(scene: Scene, asked: tuple[Line, ...], heights) -> Zones:
+def zones(scene: Scene, strengths: FieldStrengths, asked: tuple[Line, ...], heights) -> Zones:
     """Boundaries at 0-2 m, at `heights`, and in two vertical planes through every antenna."""
-    strengths = scene.strengths
     different = _different(scene, asked)
     ratios = [line.ratio for line in different]
     reach = tuple(found.distance for found in compliance_distances(strengths, ratios)) if ratios else ()
@@ -98,6 +108,7 @@ def zones(scene: Scene, asked: tuple[Line, ...], heights) -> Zones:
         tuple(drawn),
         judged[None],
         shapely.union_all([judged[h] for h in judged if h is not None]),
+        shapely.MultiLineString([(a[:2], b[:2]) for a, b in zip(*strengths.segments, strict=True)]),
     )
 
 
