@@ -1,0 +1,1 @@
+"""What a person or another program is given: files, tables, pictures, the report."""
