@@ -73,7 +73,9 @@ def contours(frequency, height, level):
 
 def squares_per_watt(frequency, height, level, segments_per_wavelength=None):
     """Distances (d,), and the E^2 and H^2 per watt (t, d) at them."""
-    currents = fs.solve([dipole(frequency, height)], [fs.Feed(0)], frequency, GROUND, (), segments_per_wavelength)
+    currents = fs.solve(
+        [dipole(frequency, height)], [fs.Feed(0)], frequency, GROUND, (), segments_per_wavelength
+    )
     distance, points = contours(frequency, height, level)
     field = fs.near_field(currents.scaled_to(1.0), points.reshape(-1, 3))
     shape = points.shape[:2]
