@@ -28,7 +28,12 @@ def searched(scene: Scene, rules: tuple[Rule, ...], area: Area) -> SearchedArea:
     """The worst places of an area."""
     mine = tuple(rule for rule in rules if rule.population == area.population)
     usable = tuple(rule for rule in mine if rule.tests)
-    found = dict(zip(usable, exposures(scene.strengths, usable, prism(area)), strict=True)) if usable else {}
+    if usable:
+        loud, beside = scene.loud_strengths(usable, 1.0), scene.places_beside()
+        found = exposures(scene.strengths, usable, prism(area), loud, beside)
+    else:
+        found = ()
+    found = dict(zip(usable, found, strict=True))
     return SearchedArea(area, mine, tuple(found.get(rule) for rule in mine))
 
 

@@ -1,12 +1,16 @@
 """How far each transmission, and all together, reach the limit."""
 
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
+
+import numpy as np
 
 from exposure.assessment.distances import Distance, compliance_distances, setbacks
 from exposure.assessment.model import TransmissionResult
 from exposure.assessment.ratios import Rule
 from exposure.assessment.scene import Part, Scene, own_rule, own_strengths
 from exposure.site.model import Transmission
+
+NEARLY = 0.9  # exposure ratio at the place of another lobe, which is known to a few percent
 
 
 @dataclass(frozen=True)
@@ -56,8 +60,20 @@ def reaches(scene: Scene, part: Part) -> tuple[Reach, ...]:
     strengths = own_strengths(part)
     compliance = compliance_distances(strengths, ratios) if ratios else ()
     aside = setbacks(strengths, ratios, compliance) if ratios else ()
-    found = {i: (compliance[j], aside[j]) for j, i in enumerate(usable)}
+    found = {
+        i: tuple(_seen(strengths, ratios[j], distance) for distance in (compliance[j], aside[j]))
+        for j, i in enumerate(usable)
+    }
     return tuple(Reach(*pair, *found.get(i, (None, None))) for i, pair in enumerate(asked))
+
+
+def _seen(strengths, ratio, found: Distance) -> Distance:
+    """Only those other lobes that do reach the limit, or nearly, at the place that is named."""
+    if not found.islands:
+        return found
+    ratios = ratio(strengths.values(np.array([place for _, place in found.islands])))
+    islands = tuple(island for island, r in zip(found.islands, ratios, strict=True) if r >= NEARLY)
+    return replace(found, islands=islands)
 
 
 def _elsewhere(found: Distance, words: str) -> list[str]:

@@ -57,22 +57,27 @@ class Scene:
 
         Around the rest the field is below every limit, so that no boundary is there.
         """
-        wires = dict.fromkeys(
-            axis
-            for part in self.parts
-            for axis in (*_axes(part.source.model.own), *self._loud(part, rules, factor))
-        )
+        own = (axis for part in self.parts for axis in _axes(part.source.model.own))
+        wires = dict.fromkeys((*own, *self._loud(rules, factor)))
         return replace(self.strengths, conductors=_arrays(wires))
 
-    def _loud(self, part: Part, rules, factor: float):
-        transmitting = {p.source.model.antenna for p in self.parts}
-        pieces = [p for p in part.source.model.pieces if p.owner not in transmitting]
-        if not pieces:
+    def places_beside(self) -> np.ndarray:
+        """Places as near as touching along all other metal, (k, 3). [m]"""
+        found = [places for piece in self._other_metal() for _, places in _beside(piece)]
+        return np.concatenate(found) if found else np.zeros((0, 3))
+
+    def _other_metal(self):
+        transmitting = {part.source.model.antenna for part in self.parts}
+        pieces = dict.fromkeys(piece for part in self.parts for piece in part.source.model.pieces)
+        return [piece for piece in pieces if piece.owner not in transmitting]
+
+    def _loud(self, rules, factor: float):
+        pairs = [pair for piece in self._other_metal() for pair in _beside(piece)]
+        if not pairs:
             return
-        axes, places = zip(*(pair for piece in pieces for pair in _beside(piece)), strict=True)
-        values = self.values(np.concatenate(places))
-        ratio = np.max([rule.ratio(values) for rule in rules if rule.tests], axis=0, initial=0.0)
-        for axis, most in zip(axes, ratio.reshape(len(axes), -1).max(axis=1), strict=True):
+        values = self.values(np.concatenate([places for _, places in pairs]))
+        ratio = np.max([rule.ratio(values) for rule in rules if rule.tests], axis=0)
+        for (axis, _), most in zip(pairs, ratio.reshape(len(pairs), -1).max(axis=1), strict=True):
             if factor * most >= LOUD:
                 yield axis
 
