@@ -31,7 +31,7 @@ class Wire:
     ------
     GeometryError
         Numbers that are not finite, no length, a radius that is not positive, or a wire shorter
-        than two radii (D. R. Wilton and N. J. Champagne, IEEE Trans. AP-54 (2006) 1230: the
+        than two radii (D. R. Wilton and N. J. Champagne, IEEE Trans. AP-54 (2006) 1200, from memory: the
         integrals hold for segments of two radii; shorter ones are not thin wires).
     """
 

@@ -44,7 +44,7 @@ def local_to_degrees(latitude: float, longitude: float):
         distance = math.hypot(east, north)
         if distance > FARTHEST:
             raise ExposureError(
-                f"a boundary reaches {distance:.0f} m from [place]; up to {FARTHEST:.0f} m can be put on a map"
+                f"a boundary reaches {distance:.0f} m from [place]; a map takes up to {FARTHEST:.0f} m"
             )
         return [
             round(longitude + math.degrees(east / parallel), DECIMALS),
