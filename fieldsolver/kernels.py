@@ -5,7 +5,7 @@ the hats N_0 = 1 - s/L, N_1 = s/L.  Three rules say what R is (docs/theory.md):
 
 1. segments on one line: the current is a sheet on the tube, so the kernel is averaged round the
    wire, R^2 = z^2 + 4 a^2 sin^2(phi/2) (D. R. Wilton and N. J. Champagne, IEEE Trans. AP-54
-   (2006) 1230); far away that average is R^2 = z^2 + 2 a^2;
+   (2006) 1200, page from memory); far away that average is R^2 = z^2 + 2 a^2;
 2. segments that meet at an angle: R^2 = d^2 + (a^2 + b^2) clip(1 - 1.5 sin^2(turn/2), 1/4, 1), the
    second-order average over both circumferences;
 3. all others: R^2 = d^2, the distance of the axes.
