@@ -170,7 +170,7 @@ def _assessment(found: Found, progress) -> Assessment:
         levels=wording.level_infos(found.rules),
         conductors=wording.conductors(scene_),
         choices=wording.choices(site, decision, found.factor, scene_, found.rules),
-        not_assessed=wording.not_assessed(site),
+        not_assessed=wording.not_assessed(site, scene_),
         left_out=wording.left_out(scene_),
         site_text=site.text,
     )

@@ -17,6 +17,7 @@ NOT_ASSESSED = (
     "other emitters on or near the site that the site file does not name",
     "a person's own effect on the fields: levels refer to the undisturbed field",
 )
+BRIEF_ABOVE = 400e6  # Hz
 
 
 def site_info(site: Site) -> SiteInfo:
@@ -203,6 +204,12 @@ def warnings(site: Site, scene: Scene, zones: Zones) -> tuple[str, ...]:
     return tuple(dict.fromkeys(found))
 
 
-def not_assessed(site: Site) -> tuple[str, ...]:
-    """What this assessment says nothing about."""
-    return NOT_ASSESSED
+def not_assessed(site: Site, scene: Scene) -> tuple[str, ...]:
+    """What this assessment says nothing about, and what the models of its antennas leave out."""
+    notes = [note for part in scene.parts for note in part.source.model.notes if "not assessed" in note]
+    brief = [
+        f"{t.name}: brief local exposure within an averaging time (ICNIRP 2020, Table 7, above 400 MHz)"
+        for t in site.transmissions
+        if t.frequency > BRIEF_ABOVE
+    ]
+    return tuple(dict.fromkeys((*NOT_ASSESSED, *notes, *brief)))
