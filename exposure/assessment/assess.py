@@ -36,8 +36,12 @@ def assess(site: Site, progress=None) -> Assessment:
     """
     progress = progress or (lambda text: None)
     sources = Sources(site)
-    found = _checked(scene(site, sources, progress), sources, progress)
-    return _assessment(found, progress)
+    return assessment_of(scene(site, sources, progress), sources, progress)
+
+
+def assessment_of(scene_: Scene, sources: Sources, progress) -> Assessment:
+    """The same from a scene whose transmissions are solved, or known to have no solution."""
+    return _assessment(_checked(scene_, sources, progress), progress)
 
 
 @dataclass(frozen=True)

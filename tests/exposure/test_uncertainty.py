@@ -3,10 +3,10 @@
 import numpy as np
 import pytest
 
-from exposure.assessment.assess import assess
+from exposure.assessment.assess import assess, assessment_of
 from exposure.assessment.judged_areas import judged, searched
 from exposure.assessment.rules import rule
-from exposure.assessment.scene import own_rule, scene
+from exposure.assessment.scene import Scene, own_rule, scene
 from exposure.assessment.uncertainty import Numerics, mesh_change, other_mesh
 from exposure.assessment.verdict import UNDECIDED, WITHIN
 from exposure.site.site_file import read_site
@@ -66,6 +66,17 @@ def test_an_area_is_not_within_limits_when_one_transmission_has_no_solution(stat
 
     assert found.results[0].verdict == UNDECIDED
     assert "other: no solution was found" in found.results[0].reason
+
+
+def test_a_station_without_any_solution_has_a_complete_assessment_that_decides_nothing(station):
+    unsolved = Scene(station.site, (), (("voice", "no solution was found: singular"),))
+
+    found = assessment_of(unsolved, Sources(station.site), lambda text: None)
+
+    assert found.verdict == UNDECIDED
+    assert found.property.inside is None
+    assert any("singular" in text for text in found.reasons)
+    assert found.transmissions[0].quality.passed is False
 
 
 def test_an_area_whose_population_no_rule_covers_cannot_be_decided(station):
