@@ -1,5 +1,7 @@
 """The tests of a document for a population and the transmissions of a station."""
 
+from dataclasses import replace
+
 from exposure.assessment.ratios import Rule
 from exposure.assessment.sums import of_levels
 from exposure.errors import OutOfScopeError
@@ -20,7 +22,7 @@ def rule(limits_id: str, population: str, emissions, unsolved=()) -> Rule:
     levels, missing = {}, [f"{name}: {reason}" for name, reason in unsolved]
     for emission in emissions:
         try:
-            found = reference_levels(limits_id, population, emission.frequency)
+            found = _judged_levels(limits_id, population, emission.frequency)
         except OutOfScopeError as error:
             missing.append(f"{emission.name}: {error}")
             continue
@@ -34,6 +36,15 @@ def rule(limits_id: str, population: str, emissions, unsolved=()) -> Rule:
         if not found:
             missing.append(f"{emission.name}: {limits_id} gives no level at {emission.frequency / 1e6:g} MHz")
     return of_levels(limits_id, population, emissions, levels, document(limits_id).SUMMATION, tuple(missing))
+
+
+def _judged_levels(limits_id: str, population: str, frequency: float) -> tuple[Level, ...]:
+    """The levels as they are compared: a local one without time average where brief exposures are limited."""
+    brief = frequency > document(limits_id).BRIEF_LOCAL_ABOVE
+    return tuple(
+        replace(level, averaging_time_s=0.0) if brief and level.scope == "local" else level
+        for level in reference_levels(limits_id, population, frequency)
+    )
 
 
 def averaging_times(limits_id: str, population: str, frequency: float) -> tuple[float, ...]:

@@ -17,7 +17,6 @@ NOT_ASSESSED = (
     "other emitters on or near the site that the site file does not name",
     "a person's own effect on the fields: levels refer to the undisturbed field",
 )
-BRIEF_ABOVE = 400e6  # Hz
 
 
 def site_info(site: Site) -> SiteInfo:
@@ -174,6 +173,12 @@ def choices(site: Site, decision: DecisionRule, factor: float, scene: Scene, rul
         "assessed",
         "where only a power density is given, the larger of E^2/377 ohm and 377 ohm H^2 is compared with it",
     ]
+    brief_above = min(document(limits).BRIEF_LOCAL_ABOVE for limits in site.limits)
+    if any(transmission.frequency > brief_above for transmission in site.transmissions):
+        found.append(
+            "above 400 MHz the local level is compared with peak envelope power, without time averaging: an "
+            "upper bound of the document's limits of brief exposure"
+        )
     if site.property_corners is not None:
         found.append("the property is judged by the spatial peak, its boundary moved out by 1 % of its reach")
     found += [note for rule in rules for note in rule.notes]
@@ -207,9 +212,4 @@ def warnings(site: Site, scene: Scene, zones: Zones) -> tuple[str, ...]:
 def not_assessed(site: Site, scene: Scene) -> tuple[str, ...]:
     """What this assessment says nothing about, and what the models of its antennas leave out."""
     notes = [note for part in scene.parts for note in part.source.model.notes if "not assessed" in note]
-    brief = [
-        f"{t.name}: brief local exposure within an averaging time (ICNIRP 2020, Table 7, above 400 MHz)"
-        for t in site.transmissions
-        if t.frequency > BRIEF_ABOVE
-    ]
-    return tuple(dict.fromkeys((*NOT_ASSESSED, *notes, *brief)))
+    return tuple(dict.fromkeys((*NOT_ASSESSED, *notes)))

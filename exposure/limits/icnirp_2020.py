@@ -10,6 +10,10 @@ REFERENCE = (
     "ICNIRP, Health Physics 118 (2020) 483-524; nerve stimulation: ICNIRP, Health Physics 99 (2010) 818-836"
 )
 POPULATIONS = ("general_public", "occupational")
+# Table 7 (from memory, confidence 0.92) limits the energy of any burst of t < 360 s above 400 MHz to
+# U(t) = S_L 360 s (0.05 + 0.95 sqrt(t/360 s)); since t <= 360 s is less than that, S at its peak below the level
+# S_L of Table 6 is always enough.  Above this frequency [Hz] the assessment therefore takes no time average.
+BRIEF_LOCAL_ABOVE = 400e6
 SUMMATION = Summation(
     electric_and_magnetic_add=(("heating", "whole_body", 30e6),),
     clause="ICNIRP 2020, simultaneous exposure, whole-body reference levels (from memory)",

@@ -10,6 +10,7 @@ REFERENCE = (
     "Code of Federal Regulations, Title 47, section 1.1310 (e)(1), Table 1; OET Bulletin 65 (Edition 97-01)"
 )
 POPULATIONS = ("general_public", "occupational")
+BRIEF_LOCAL_ABOVE = float("inf")  # Hz: no limit of brief local exposure
 SUMMATION = Summation(
     electric_and_magnetic_add=(),
     clause="OET Bulletin 65, section 2: quotients of S, or of the squares of E and of H apart (from memory)",

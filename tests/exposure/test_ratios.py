@@ -247,3 +247,13 @@ def test_icnirp_2020_stimulation_rules_an_ssb_station_at_3_7_mhz():
 
     assert found.ratio(values) == pytest.approx([100 * 100 / 83**2], rel=1e-12)
     assert found.cause(values).effect == "stimulation"
+
+
+@pytest.mark.parametrize("frequency, power", [(399e6, 1.0), (430e6, 10.0)])
+def test_above_400_mhz_a_burst_counts_with_its_peak_against_the_local_level(frequency, power):
+    """ICNIRP 2020, Table 7 (from memory) limits brief exposure there; Table 6 without average bounds it."""
+    burst = emission(power=Power(peak=10.0, mean=1.0), frequency=frequency)
+    found = rule("icnirp_2020", "general_public", (burst,))
+
+    (local,) = (test for test in found.tests if test.scope == "local")
+    assert local.terms[0].power == power

@@ -137,3 +137,9 @@ def test_an_unknown_document_or_population_is_refused_by_name():
         reference_levels("no_such", "general_public", 1e7)
     with pytest.raises(OutOfScopeError, match="general_public, occupational"):
         reference_levels("us_fcc", "visitors", 1e7)
+
+
+def test_a_burst_below_the_local_level_is_below_the_limit_of_brief_exposure():
+    """Table 7 (from memory): U(t) = S_L 360 (0.05 + 0.95 sqrt(t/360)) is at least S_L t for t up to 360 s."""
+    for t in range(1, 361):
+        assert 360 * (0.05 + 0.95 * (t / 360) ** 0.5) >= t - 1e-9
