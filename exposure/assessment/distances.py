@@ -11,8 +11,9 @@ from dataclasses import dataclass
 
 import numpy as np
 
+from exposure.assessment.islands import separate
 from exposure.assessment.panels import sampled, strengths_of
-from exposure.assessment.shells import HEAD, around, aside
+from exposure.assessment.shells import HEAD, around, aside, axes, beneath
 from exposure.assessment.strengths import FieldStrengths
 
 FARTHEST = 1000.0  # m; beyond it a distance is called unbounded
@@ -27,6 +28,8 @@ STEP = 0.25  # of the distance from shell to shell
 OVERSHOOT = 1.3  # a lobe may be that much higher than its highest sample
 LEAST_SEED = 0.5  # ratio; a power of distance is not trusted further than that
 BOXES = (0.30, 0.10, 0.03, 0.01)  # half sides of the boxes around the best place, of the distance
+LEAST_BOX = 1e-4  # m, half side
+BESIDE = 0.5  # m: at other metal, boxes as if the conductors were that far
 CLIMBS = 6
 BOX_ORDER = 3
 BOX_LOOKS = 13
@@ -43,7 +46,8 @@ class Distance:
         [m]; 0 where the ratio is below one everywhere, None where no bound was found.
     position : (3,) float or None
     islands : tuple of (distance, position)
-        Other lobes that reach the limit on the outermost shell, to a few percent.
+        Other regions that reach the limit about as far out, as far as they are known to be separate;
+        none is farther out than `distance`.
     bounded : bool
         False: the ratio is one or more, or was not seen to fall, as far as `FARTHEST`.
     """
@@ -54,25 +58,34 @@ class Distance:
     bounded: bool
 
 
-def compliance_distances(strengths: FieldStrengths, ratios, farthest=FARTHEST) -> tuple[Distance, ...]:
-    """For each ratio function the largest distance to the nearest conductor axis, over up >= 0."""
-    search = _Search(strengths, tuple(ratios), strengths.distance, around, np.inf, NEAREST)
+NOWHERE = np.zeros((0, 3))
+
+
+def compliance_distances(
+    strengths: FieldStrengths, ratios, farthest=FARTHEST, beside=NOWHERE
+) -> tuple[Distance, ...]:
+    """For each ratio function the largest distance to the nearest conductor axis, over up >= 0.
+
+    beside : (k, 3) places close to other metal, where a field may rise that no shell around the
+    antenna's own conductors would see. [m]
+    """
+    search = _Search(strengths, tuple(ratios), strengths.distance, around, np.inf, NEAREST, axes, beside)
     outer = search.outermost(farthest)
     return search.inwards(outer, farthest)
 
 
-def setbacks(strengths: FieldStrengths, ratios, compliance) -> tuple[Distance, ...]:
+def setbacks(strengths: FieldStrengths, ratios, compliance, beside=NOWHERE) -> tuple[Distance, ...]:
     """The same in plan, over the heights of people, 0-2 m above ground.
 
     compliance : the result of :func:`compliance_distances`, which bounds the search.
     """
+    beside = beside[beside[:, 2] <= HEAD]
     drop = max(strengths.box[0, 2] - HEAD, 0.0)
     reach = np.array([FARTHEST if c.distance is None else REACH_MARGIN * c.distance for c in compliance])
     outer = np.sqrt(np.maximum(reach**2 - drop**2, 0.0))
     near = [i for i in range(len(ratios)) if outer[i] > 0]
-    search = _Search(
-        strengths, tuple(ratios[i] for i in near), strengths.plan_distance, aside, HEAD, NEAREST_ASIDE
-    )
+    own = tuple(ratios[i] for i in near)
+    search = _Search(strengths, own, strengths.plan_distance, aside, HEAD, NEAREST_ASIDE, beneath, beside)
     found = [Distance(0.0, None, (), True) for _ in ratios]
     for i, place in zip(near, search.inwards(float(outer.max(initial=0.0)), FARTHEST), strict=True):
         found[i] = place if compliance[i].bounded else Distance(None, None, (), False)
@@ -80,15 +93,16 @@ def setbacks(strengths: FieldStrengths, ratios, compliance) -> tuple[Distance, .
 
 
 class _Search:
-    def __init__(self, strengths, ratios, distance, shell, top, nearest):
-        self.strengths, self.ratios, self.distance, self.shell, self.top = (
-            strengths,
-            ratios,
-            distance,
-            shell,
-            top,
-        )
-        self.nearest = nearest
+    """One search.
+
+    shell : (strengths, distance, spacing) -> places at a distance; innermost : (strengths, nearest) ->
+    places at no distance at all; top : greatest height of a place.
+    """
+
+    def __init__(self, strengths, ratios, distance, shell, top, nearest, innermost, beside):
+        self.strengths, self.ratios, self.distance = strengths, ratios, distance
+        self.shell, self.innermost, self.top, self.nearest = shell, innermost, top, nearest
+        self.beside = self._measured(beside)
         box = strengths.box
         height = box[1, 2]
         self.extent = 0.5 * np.linalg.norm([*(box[1] - box[0])[:2], 2 * height])
@@ -122,7 +136,46 @@ class _Search:
             most = max((ratios[i].max() for i in open_), default=0.0) if len(points) else 0.0
             coarse = next(wide for least, wide in COARSE if most >= least)
             distance = self._next(distance, coarse)
-        return tuple(f if f is not None else Distance(0.0, None, (), True) for f in found)
+        if any(f is None for f in found):
+            found = self._innermost(found)
+        return tuple(self._with_metal(i, f) for i, f in enumerate(found))
+
+    def _innermost(self, found):
+        """Where only places nearer than the last shell reach one, that shell is an upper bound."""
+        points, _, ratios = self._measured(self.innermost(self.strengths, self.nearest))
+        nothing = Distance(0.0, None, (), True)
+        result = list(found)
+        for i in (i for i, f in enumerate(found) if f is None):
+            top = int(np.argmax(ratios[i])) if len(points) else 0
+            reached = len(points) and ratios[i][top] >= 1
+            result[i] = Distance(self.nearest, _place(points[top]), (), True) if reached else nothing
+        return result
+
+    def _with_metal(self, i, found):
+        """The same, or a place beside other metal where that is farther out."""
+        points, distances, ratios = self.beside
+        farther = (ratios[i] >= 1) & (distances > (found.distance if found.bounded else np.inf))
+        if not farther.any():
+            return found
+        best = (0.0, None)
+        for point, _ in self._apart(points[farther], np.full(farther.sum(), BESIDE), distances[farther]):
+            place, distance = point, 0.0
+            for size in BOXES:
+                climbed = self._climb(i, place, size * BESIDE)
+                if climbed[1] > 0:
+                    place, distance = climbed
+            best = max(best, (distance, place), key=lambda b: b[0])
+        known = int(np.argmax(np.where(farther, distances, 0.0)))
+        if best[0] < distances[known]:
+            best = (distances[known], points[known])
+        return Distance(float(best[0]), _place(best[1]), found.islands, True)
+
+    def _measured(self, points):
+        """Places with their distances and the ratios there."""
+        if not len(points):
+            return points, np.zeros(0), np.zeros((len(self.ratios), 0))
+        values = self.strengths.values(points)
+        return points, self.distance(points), np.array([r(values) for r in self.ratios])
 
     def _unbounded(self):
         return Distance(None, None, (), False)
@@ -153,16 +206,14 @@ class _Search:
         reached = distances * np.clip(ratios, 1e-9, OVERSHOOT**4) ** (1 / slope)
         hopeful = (ratios > LEAST_SEED) & (reached * OVERSHOOT ** (1 / slope) >= reached[ratios >= 1].max())
         seeds = self._apart(points[hopeful], distances[hopeful], reached[hopeful])
-        first = sorted((self._climb(i, point, BOXES[0] * d) for point, d in seeds), key=lambda f: -f[1])
         known = int(np.argmax(np.where(ratios >= 1, distances, 0.0)))
         if not np.isfinite(ratios[known]):
             return self._contact(points[known], distances[known], seen)
-        best = self._finer(i, *first[0], slope) if first[0][1] > 0 else (0.0, points[known])
-        if best[0] < distances[known]:
-            best = (distances[known], points[known])
-        islands = tuple(
-            (float(d), _place(p)) for p, d in first[1:] if np.linalg.norm(p - best[1]) > 0.5 * d > 0
-        )
+        climbed = [self._climb(i, point, BOXES[0] * d) for point, d in seeds]
+        lobes = [self._finer(i, *lobe, slope) for lobe in climbed if lobe[1] > 0]
+        lobes.append((distances[known], points[known]))
+        best, *others = sorted(lobes, key=lambda lobe: -lobe[0])
+        islands = separate(self.strengths.values, self.ratios[i], self.strengths.foot, best, others)
         return Distance(float(best[0]), _place(best[1]), islands, True)
 
     def _contact(self, point, distance, seen):
@@ -192,7 +243,10 @@ class _Search:
     def _finer(self, i, place, distance, slope):
         """Smaller boxes around a place, then one step outwards by the true field."""
         for size in BOXES[1:]:
-            place, distance = self._climb(i, place, size * distance)
+            nearer = self._climb(i, place, size * distance)
+            if nearer[1] <= 0:  # a small box beside the line does not see it: the last one stands
+                break
+            place, distance = nearer
         ratio = float(self.ratios[i](self.strengths.values(place[None]))[0])
         return distance * np.clip(ratio, 0.5, 2.0) ** (1 / slope), place
 
@@ -213,6 +267,7 @@ class _Search:
         slope of the ratio, at most one look farther.  Where the ratio is below one everywhere: the
         place where it is greatest, and 0.
         """
+        half = max(half, LEAST_BOX)
         lower, upper = centre - half, centre + half
         lower[2] = np.clip(lower[2], 0.0, max(self.top - half, 0.0))
         upper[2] = min(max(upper[2], half), self.top)

@@ -7,7 +7,7 @@ import numpy as np
 from exposure.assessment.distances import Distance, compliance_distances, setbacks
 from exposure.assessment.model import TransmissionResult
 from exposure.assessment.ratios import Rule
-from exposure.assessment.scene import Part, Scene, own_rule, own_strengths
+from exposure.assessment.scene import Part, Scene, beside_other_metal, own_rule, own_strengths
 from exposure.site.model import Transmission
 
 NEARLY = 0.9  # exposure ratio at the place of another lobe, which is known to a few percent
@@ -58,8 +58,9 @@ def reaches(scene: Scene, part: Part) -> tuple[Reach, ...]:
     usable = [i for i, (_, rule) in enumerate(asked) if rule.tests]
     ratios = [asked[i][1].ratio for i in usable]
     strengths = own_strengths(part)
-    compliance = compliance_distances(strengths, ratios) if ratios else ()
-    aside = setbacks(strengths, ratios, compliance) if ratios else ()
+    beside = beside_other_metal(part)
+    compliance = compliance_distances(strengths, ratios, beside=beside) if ratios else ()
+    aside = setbacks(strengths, ratios, compliance, beside) if ratios else ()
     found = {
         i: tuple(_seen(strengths, ratios[j], distance) for distance in (compliance[j], aside[j]))
         for j, i in enumerate(usable)

@@ -131,6 +131,15 @@ def own_strengths(part: Part) -> FieldStrengths:
     return FieldStrengths(part.source.squared_strengths, _arrays(axes), part.source.model.wavelength)
 
 
+def beside_other_metal(part: Part) -> np.ndarray:
+    """Places as near as touching along all metal that is not the antenna's own, up >= 0, (k, 3). [m]"""
+    model = part.source.model
+    pieces = (piece for piece in model.pieces if piece.owner != model.antenna)
+    found = [places for piece in pieces for _, places in _beside(piece)]
+    places = np.concatenate(found) if found else np.zeros((0, 3))
+    return places[places[:, 2] >= 0]
+
+
 def own_rule(pair, part: Part, transmission: Transmission) -> Rule:
     """A set and population for one transmission, on the values of its part alone."""
     return rule(*pair, (_emission(transmission, part, 0),))

@@ -29,23 +29,45 @@ def around(strengths, distance, spacing):
 
 
 def aside(strengths, distance, spacing):
-    """Points at a distance in plan, from the ground to `HEAD`, (n, 3). [m]"""
+    """Points at a distance in plan, from the ground to `HEAD`, (n, 3); conductors' own heights too. [m]"""
     starts, ends = strengths.segments
-    tips = np.unique(np.concatenate([starts, ends])[:, :2], axis=0)
+    tips = np.unique(np.concatenate([starts, ends]), axis=0)
     angle = _angles(distance, spacing)
-    turn = np.column_stack([np.cos(angle), np.sin(angle)])
-    parts = [(tips[:, None, :] + distance * turn).reshape(-1, 2)]
-    for start, end in zip(starts[:, :2], ends[:, :2], strict=True):
-        along = end - start
+    turn = distance * np.column_stack([np.cos(angle), np.sin(angle), np.zeros(len(angle))])
+    parts = [(tips[:, None, :] + turn).reshape(-1, 3)]
+    for start, end in zip(starts, ends, strict=True):
+        along = (end - start)[:2]
         length = np.linalg.norm(along)
         if length > 1e-9:
-            normal = np.array([-along[1], along[0]]) / length
+            normal = distance * np.array([-along[1], along[0], 0.0]) / length
             foot = _along(start, end, distance, strengths.wavelength)
-            parts += [foot + distance * normal, foot - distance * normal]
-    plan = np.concatenate(parts)
-    plan = _thinned(plan, strengths.plan_distance, distance, spacing)
+            parts += [foot + normal, foot - normal]
+    places = np.concatenate(parts)
+    plan = _thinned(places[:, :2], strengths.plan_distance, distance, spacing)
     heights = _heights(np.unique(np.concatenate([starts, ends])[:, 2]), spacing)
-    return np.column_stack([np.repeat(plan, len(heights), axis=0), np.tile(heights, len(plan))])
+    standing = np.column_stack([np.repeat(plan, len(heights), axis=0), np.tile(heights, len(plan))])
+    level = _among_people(places)
+    return np.concatenate([standing, _thinned(level, strengths.plan_distance, distance, spacing)])
+
+
+def beneath(strengths, distance):
+    """Points straight above and below the conductors, from the ground to `HEAD`, (n, 3). [m]"""
+    feet = axes(strengths, distance)
+    heights = _heights(np.zeros(0), FINEST)
+    plan = np.unique(feet[:, :2], axis=0)
+    standing = np.column_stack([np.repeat(plan, len(heights), axis=0), np.tile(heights, len(plan))])
+    return np.concatenate([standing, _among_people(feet)])
+
+
+def axes(strengths, distance):
+    """Points on the axes of the conductors, (n, 3), up >= 0. [m]"""
+    pairs = zip(*strengths.segments, strict=True)
+    feet = np.concatenate([_along(start, end, distance, strengths.wavelength) for start, end in pairs])
+    return feet[feet[:, 2] >= 0]
+
+
+def _among_people(points):
+    return points[(points[:, 2] >= 0) & (points[:, 2] <= HEAD)]
 
 
 def _heights(tips, spacing):

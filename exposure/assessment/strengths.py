@@ -51,6 +51,16 @@ class FieldStrengths:
         """Distance from (n, 3) points to the nearest conductor axis, (n,). [m]"""
         return _distance(np.asarray(points, float), *self.segments)
 
+    def foot(self, points):
+        """The nearest place on a conductor axis to each of (n, 3) points, (n, 3). [m]"""
+        starts, ends = self.segments
+        along = ends - starts
+        squared = np.maximum((along**2).sum(axis=1), 1e-30)
+        fraction = np.clip(np.einsum("nsd,sd->ns", points[:, None, :] - starts, along) / squared, 0, 1)
+        feet = starts + fraction[..., None] * along
+        nearest = ((points[:, None, :] - feet) ** 2).sum(axis=2).argmin(axis=1)
+        return feet[np.arange(len(points)), nearest]
+
     def plan_distance(self, points):
         """The same in plan: from the plan of the points to the plan of the conductors. [m]"""
         starts, ends = self.segments
