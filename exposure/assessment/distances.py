@@ -13,7 +13,7 @@ import numpy as np
 
 from exposure.assessment.islands import separate
 from exposure.assessment.panels import sampled, strengths_of
-from exposure.assessment.shells import HEAD, around, aside, axes, beneath
+from exposure.assessment.shells import HEAD, around, aside, axes, ball, beneath
 from exposure.assessment.strengths import FieldStrengths
 
 FARTHEST = 1000.0  # m; beyond it a distance is called unbounded
@@ -30,6 +30,7 @@ LEAST_SEED = 0.5  # ratio; a power of distance is not trusted further than that
 BOXES = (0.30, 0.10, 0.03, 0.01)  # half sides of the boxes around the best place, of the distance
 LEAST_BOX = 1e-4  # m, half side
 BESIDE = 0.5  # m: at other metal, boxes as if the conductors were that far
+BALLS = np.array([0.03, 0.06, 0.12, 0.24, 0.48])  # m, radii of places looked at there
 CLIMBS = 6
 BOX_ORDER = 3
 BOX_LOOKS = 13
@@ -154,21 +155,26 @@ class _Search:
     def _with_metal(self, i, found):
         """The same, or a place beside other metal where that is farther out."""
         points, distances, ratios = self.beside
-        farther = (ratios[i] >= 1) & (distances > (found.distance if found.bounded else np.inf))
-        if not farther.any():
+        least = found.distance - BESIDE if found.bounded else np.inf
+        hot = (ratios[i] >= 1) & (distances > least)
+        if not hot.any():
             return found
-        best = (0.0, None)
-        for point, _ in self._apart(points[farther], np.full(farther.sum(), BESIDE), distances[farther]):
-            place, distance = point, 0.0
-            for size in BOXES:
-                climbed = self._climb(i, place, size * BESIDE)
-                if climbed[1] > 0:
-                    place, distance = climbed
-            best = max(best, (distance, place), key=lambda b: b[0])
-        known = int(np.argmax(np.where(farther, distances, 0.0)))
-        if best[0] < distances[known]:
-            best = (distances[known], points[known])
+        best = (found.distance, found.position)
+        for point, _ in self._apart(points[hot], np.full(hot.sum(), BESIDE), distances[hot]):
+            best = max(best, self._around(i, point), key=lambda lobe: lobe[0])
         return Distance(float(best[0]), _place(best[1]), found.islands, True)
+
+    def _around(self, i, point):
+        """The farthest place near one that reaches one: seen by true fields, then by boxes."""
+        near = np.concatenate([point[None], (point + BALLS[:, None, None] * ball(26)).reshape(-1, 3)])
+        near, distances, ratios = self._measured(near[(near[:, 2] >= 0) & (near[:, 2] <= self.top)])
+        top = int(np.argmax(np.where(ratios[i] >= 1, distances, 0.0)))
+        place, best = near[top], (distances[top], near[top])
+        for size in BOXES:
+            climbed = self._climb(i, place, size * BESIDE)
+            if climbed[1] > 0:
+                place, best = climbed[0], max(best, (climbed[1], climbed[0]), key=lambda lobe: lobe[0])
+        return best
 
     def _measured(self, points):
         """Places with their distances and the ratios there."""

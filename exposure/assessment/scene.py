@@ -108,7 +108,7 @@ class Scene:
 
 
 def _beside(piece: Piece):
-    """Short pieces of a conductor, each with places on four sides of its middle, as near as touching."""
+    """Short pieces of a conductor with places as near as touching, four at its middle and one at each end."""
     start, end = np.asarray(piece.points)
     along = end - start
     count = max(1, int(np.ceil(np.linalg.norm(along) / PIECE)))
@@ -120,7 +120,7 @@ def _beside(piece: Piece):
     )
     for i in range(count):
         low, high = (start + (i + j) / count * along for j in (0, 1))
-        places = 0.5 * (low + high) + around
+        places = np.concatenate([0.5 * (low + high) + around, [low + around[0], high + around[1]]])
         places[:, 2] = np.maximum(places[:, 2], 0.0) if min(start[2], end[2]) >= 0 else places[:, 2]
         yield (tuple(low), tuple(high)), places
 

@@ -17,7 +17,7 @@ def around(strengths, distance, spacing):
     """Points at a distance in space, (n, 3), up >= 0, ground included. [m]"""
     starts, ends = strengths.segments
     tips = np.unique(np.concatenate([starts, ends]), axis=0)
-    parts = [(tips[:, None, :] + distance * _ball(distance, spacing)).reshape(-1, 3)]
+    parts = [(tips[:, None, :] + distance * ball(_directions(distance, spacing))).reshape(-1, 3)]
     feet = [tips]
     for start, end in zip(starts, ends, strict=True):
         foot = _along(start, end, distance, strengths.wavelength)
@@ -104,9 +104,12 @@ def _circle(axis, distance, spacing):
     return np.cos(angle)[:, None] * level + np.sin(angle)[:, None] * np.cross(level, axis)
 
 
-def _ball(distance, spacing):
-    """Unit directions all around, (k, 3): the spiral of golden angles, poles included."""
-    count = max(24, int(np.ceil(4 * np.pi * (distance / spacing) ** 2)))
+def _directions(distance, spacing):
+    return max(24, int(np.ceil(4 * np.pi * (distance / spacing) ** 2)))
+
+
+def ball(count):
+    """Unit directions all around, (count, 3): the spiral of golden angles, poles included."""
     up = np.linspace(-1, 1, count)
     angle = np.pi * (3 - np.sqrt(5)) * np.arange(count)
     level = np.sqrt(1 - up**2)
