@@ -1,0 +1,232 @@
+"""What the sections of the report hold, each a function from the assessment to a list for the page."""
+
+from dataclasses import dataclass
+
+from reportlab.lib.colors import black
+from reportlab.platypus import CondPageBreak, KeepTogether, Paragraph, Preformatted, Spacer, Table
+
+from exposure.assessment.model import Assessment
+from exposure.outputs import tables, words
+from exposure.outputs.formats import metres
+from exposure.outputs.report_style import (
+    CAPTION,
+    CELL,
+    INPUT,
+    MONO,
+    NOTE,
+    PART,
+    TEXT,
+    bullets,
+    drawable,
+    marked,
+    paragraph,
+)
+from exposure.outputs.report_tables import paper_table
+from exposure.outputs.vector_figures import VectorFigure
+
+CAPTION_ROOM = 150  # points kept below a figure for its words
+LINE_OF_INPUT = 112  # characters
+
+
+@dataclass(frozen=True)
+class Picture:
+    """A figure as the report takes it: a one-page vector PDF with its size [mm], scale and words."""
+
+    name: str
+    title: str
+    caption: str
+    alt: str
+    width_mm: float
+    height_mm: float
+    scale: str
+    pdf: bytes
+
+
+def figure_parts(pictures, room: tuple[float, float]) -> list:
+    """Each picture at its scale with title, caption and words, kept together; room: width, height [points]."""
+    if not pictures:
+        return [paragraph("There are no figures: nothing was found to draw.")]
+    parts = []
+    for number, picture in enumerate(pictures, 1):
+        figure = VectorFigure(
+            f"figure{number}", picture.pdf, picture.width_mm, picture.height_mm, picture.alt
+        )
+        figure = figure.reduced_to(room[0], room[1] - CAPTION_ROOM)
+        reduced = (
+            f" Reduced to {100 * figure.reduction:.0f} %: use the scale bar."
+            if figure.reduction < 0.999
+            else ""
+        )
+        scale = (
+            f" Scale {_scale(picture.scale)} on paper that is printed at full size." if picture.scale else ""
+        )
+        captions = [
+            paragraph(f"Figure {number}. {picture.title}", CAPTION),
+            paragraph(picture.caption + (reduced or scale), TEXT),
+            paragraph(f"In words: {picture.alt}", NOTE),
+        ]
+        parts.append(KeepTogether([figure, *captions, Spacer(1, 8)]))
+    return parts
+
+
+def _scale(scale) -> str:
+    return scale if isinstance(scale, str) else f"1:{scale:g}"
+
+
+def areas(assessment: Assessment, width: float) -> list:
+    """A table for each set of limits; shares and reasons below."""
+    if not assessment.areas:
+        return [paragraph("The site file names no area.")]
+    parts = [
+        paragraph(words.EXPOSURE_RATIO),
+        paragraph(words.AREA_COLUMNS, NOTE),
+    ]
+    for limits in dict.fromkeys(result.limits for area in assessment.areas for result in area.results):
+        parts += _part(f"By {limits}", paper_table(tables.areas(assessment, limits), width))
+    parts += _part("Reasons", bullets(tables.area_reasons(assessment)))
+    parts += _part(
+        "Parts of the transmissions at the worst place", paper_table(tables.shares(assessment), width)
+    )
+    parts += _part(
+        "Areas that are not judged as general public", paper_table(tables.informed(assessment), width)
+    )
+    return parts
+
+
+def property_words(assessment: Assessment) -> list:
+    """Whether the zone stays on the operator's land."""
+    land = assessment.property
+    if land is None:
+        return [
+            paragraph("The site file states no property: whether the zone stays on it was not looked at.")
+        ]
+    told = {True: "yes", False: "NO", None: "cannot be decided"}
+    margin = (
+        "none: no distance was found"
+        if land.least_margin_m is None
+        else metres(land.least_margin_m, tables.feet(assessment))
+        + (" (beyond it)" if land.least_margin_m < 0 else "")
+    )
+    return bullets(
+        [
+            f"The zone at 0–2 m above ground (general public, all transmissions) stays inside: {told[land.inside]}",
+            f"The zone at every height stays inside: {told[land.inside_at_all_heights]}",
+            f"Least distance from the zone to the edge of the property: {margin}",
+            *([land.reason] if land.reason else []),
+        ]
+    )
+
+
+def distances(assessment: Assessment, width: float) -> list:
+    """Compliance distance and setback of each transmission alone."""
+    return [
+        paragraph(words.DISTANCES),
+        *(paper_table(tables.distances(assessment), width) or [paragraph("No distance was found.")]),
+    ]
+
+
+def station(assessment: Assessment, width: float) -> list:
+    """Transmissions, powers step by step, groups, antennas as solved."""
+    parts = [*paper_table(tables.transmissions(assessment), width)]
+    parts += _part("Exclusive groups", bullets(tables.exclusive(assessment)))
+    for finding in assessment.transmissions:
+        parts += _part(f"Power of {finding.name}", paper_table(tables.power_steps(finding), width))
+    parts += _part("Antennas at their feeds", paper_table(tables.antennas(assessment), width))
+    parts += _part("Conductors as solved", paper_table(tables.conductors(assessment), width))
+    parts += _part("Left out of the solution", bullets(assessment.left_out))
+    site = assessment.site
+    place = (
+        "not stated"
+        if site.place_deg is None
+        else f"latitude {site.place_deg[0]:.6f}°, longitude {site.place_deg[1]:.6f}° (WGS84)"
+    )
+    lines = (
+        f"Ground: {site.ground or 'not stated'}.",
+        f"Origin of the coordinates: {place}. East, north and up are in metres from it; heights are above local ground, "
+        "north is true north.",
+    )
+    return [*bullets(lines), *parts]
+
+
+def levels(assessment: Assessment, width: float) -> list:
+    """Documents and the levels used."""
+    return [
+        *paper_table(tables.limits(assessment), width),
+        *_part("Levels as used", paper_table(tables.levels(assessment), width)),
+        paragraph(words.LEVELS, NOTE),
+    ]
+
+
+def method(assessment: Assessment, width: float) -> list:
+    """How it was computed, how well, and what it does not know."""
+    return [
+        *(paragraph(text) for text in words.METHOD),
+        *_part("How well each solution did", paper_table(tables.quality(assessment), width)),
+        *bullets(words.QUALITY, NOTE),
+        paragraph("What the method leaves out", PART),
+        *bullets(words.METHOD_LIMITS),
+    ]
+
+
+def signature(assessment: Assessment, width: float) -> list:
+    """What the report holds for, and lines to sign on."""
+    site = assessment.site
+    lines = [
+        [Spacer(1, 22)] * 3,
+        [paragraph("Name", CELL), "", paragraph("Function (licensee, operator, engineer)", CELL)],
+        [Spacer(1, 22)] * 3,
+        [paragraph("Place, date", CELL), "", paragraph("Signature", CELL)],
+    ]
+    rules = [("LINEABOVE", (column, row), (column, row), 0.6, black) for column in (0, 2) for row in (1, 3)]
+    table = Table(
+        lines,
+        colWidths=[0.46 * width, 0.08 * width, 0.46 * width],
+        style=[*rules, ("LEFTPADDING", (0, 0), (-1, -1), 0)],
+    )
+    return [
+        paragraph(words.VALIDITY),
+        paragraph(words.ASSESS_AGAIN),
+        KeepTogether(
+            [
+                paragraph(
+                    f"Verdict: {assessment.verdict}. Site: {site.name}. Date of the site file: {site.date or 'not stated'}."
+                ),
+                paragraph(words.STATEMENT),
+                table,
+            ]
+        ),
+    ]
+
+
+def inputs(assessment: Assessment) -> list:
+    """The site file with line numbers, its hash, the software."""
+    site, software = assessment.site, assessment.software
+    lines = [
+        piece
+        for number, line in enumerate(assessment.site_text.splitlines(), 1)
+        for piece in _numbered(number, line)
+    ]
+    return [
+        *bullets(
+            [
+                f"File: {site.file}",
+                f"SHA-256: {site.sha256}",
+                f"Software: {software.name} {software.version}",
+            ]
+        ),
+        paragraph(words.ATTACHED),
+        CondPageBreak(60),
+        Preformatted("\n".join(lines) or "the text of the site file is not in the result", INPUT),
+    ]
+
+
+def _numbered(number: int, line: str) -> list[str]:
+    """A line with its number, broken where it is too long."""
+    text = drawable(line.expandtabs(4), MONO)
+    pieces = [text[i : i + LINE_OF_INPUT] for i in range(0, len(text), LINE_OF_INPUT)] or [""]
+    return [f"{number if i == 0 else '':>4}  {piece}" for i, piece in enumerate(pieces)]
+
+
+def _part(heading: str, content: list) -> list:
+    """A small heading over its content; neither where there is no content."""
+    return [Paragraph(marked(heading), PART), *content] if content else []

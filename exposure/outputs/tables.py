@@ -1,0 +1,303 @@
+"""Tables of an assessment as rows of words: (heading, rows), every cell a string."""
+
+from dataclasses import dataclass
+
+from exposure.assessment.model import Assessment, TransmissionFinding
+from exposure.outputs import words
+from exposure.outputs.formats import (
+    NOTHING,
+    digits,
+    heights,
+    megahertz,
+    metres,
+    minutes,
+    place,
+    share,
+    watts,
+)
+
+
+@dataclass(frozen=True)
+class Table:
+    """Column names, rows, and each column's share of the width."""
+
+    columns: tuple[str, ...]
+    rows: tuple[tuple[str, ...], ...]
+    widths: tuple[float, ...]
+
+
+def feet(assessment: Assessment) -> bool:
+    """Whether feet are added: where a limit of the USA is used."""
+    return any(limit.id.startswith("us_") for limit in assessment.limits)
+
+
+def areas_in_short(assessment: Assessment) -> Table:
+    """For the first page: each area and set of limits, share and verdict."""
+    rows = [
+        (str(number), area.name, result.limits, share(result.exposure_ratio), _cause(result), result.verdict)
+        for number, area in enumerate(assessment.areas, 1)
+        for result in area.results
+    ]
+    return Table(
+        ("no.", "area", "limits", "greatest exposure", "mostly from", "verdict"),
+        tuple(rows),
+        (5, 29, 13, 20, 18, 15),
+    )
+
+
+def areas(assessment: Assessment, limits_id: str) -> Table:
+    """Every area by one set of limits: ratios, fields, place, cause."""
+    rows = [
+        (
+            f"{number} {area.name}\n{heights(area.bottom_m, area.top_m)}, {words.POPULATIONS[area.population]}",
+            _ratio(result.exposure_ratio),
+            _ratio(result.upper_bound_ratio),
+            _ratio(result.body_average_ratio),
+            digits(result.electric_v_per_m),
+            digits(result.magnetic_a_per_m),
+            place(result.position_m),
+            _governing(result),
+            result.verdict,
+        )
+        for number, area in enumerate(assessment.areas, 1)
+        for result in area.results
+        if result.limits == limits_id
+    ]
+    return Table(
+        (
+            "area\nheights, population",
+            "exposure ratio",
+            "upper bound",
+            "body average",
+            "E\n[V/m]",
+            "H\n[A/m]",
+            "place: east, north, up [m]",
+            "governed by",
+            "verdict",
+        ),
+        tuple(rows),
+        (22, 9, 9, 9, 7.5, 8.5, 10.5, 14.5, 10),
+    )
+
+
+def area_reasons(assessment: Assessment) -> tuple[str, ...]:
+    """Why an area is not simply within limits."""
+    return tuple(
+        f"{number} {area.name}, {result.limits}: {result.verdict}: {result.reason}"
+        for number, area in enumerate(assessment.areas, 1)
+        for result in area.results
+        if result.reason
+    )
+
+
+def shares(assessment: Assessment) -> Table:
+    """Parts of the transmissions at the worst point, where more than one counts."""
+    rows = [
+        (f"{number} {area.name}", result.limits, part.transmission, _ratio(part.exposure_ratio))
+        for number, area in enumerate(assessment.areas, 1)
+        for result in area.results
+        if len(result.shares) > 1
+        for part in result.shares
+    ]
+    return Table(("area", "limits", "transmission", "exposure ratio"), tuple(rows), (40, 15, 30, 15))
+
+
+def informed(assessment: Assessment) -> Table:
+    """Areas judged by occupational levels, and who was informed."""
+    rows = [
+        (f"{number} {area.name}", words.POPULATIONS[area.population], area.informed or "not stated")
+        for number, area in enumerate(assessment.areas, 1)
+        if area.population != "general_public" or area.informed
+    ]
+    return Table(("area", "population", "informed"), tuple(rows), (40, 20, 40))
+
+
+def transmissions(assessment: Assessment) -> Table:
+    """Each transmission: frequency, antenna, powers, feed impedance."""
+    rows = [
+        (
+            finding.name,
+            megahertz(finding.frequency_hz),
+            finding.antenna,
+            watts(finding.peak_power_w),
+            f"{digits(finding.line_loss_db)} dB",
+            watts(finding.accepted_power_w),
+            "\n".join(f"{watts(p.power_w)} in {minutes(p.averaging_time_s)}" for p in finding.average_powers)
+            or NOTHING,
+        )
+        for finding in assessment.transmissions
+    ]
+    return Table(
+        (
+            "transmission",
+            "frequency",
+            "antenna",
+            "peak power",
+            "line loss",
+            "accepted (peak)",
+            "mean accepted",
+        ),
+        tuple(rows),
+        (20, 13, 16, 11, 10, 12, 18),
+    )
+
+
+def power_steps(finding: TransmissionFinding) -> Table:
+    """The way from the transmitter to the mean power at the antenna, each step with its source."""
+    rows = [
+        (step.text, digits(step.factor), watts(step.power_w), step.source) for step in finding.power_steps
+    ]
+    return Table(("step", "factor", "power after it", "source"), tuple(rows), (33, 9, 13, 45))
+
+
+def exclusive(assessment: Assessment) -> tuple[str, ...]:
+    """Groups of which one transmission runs at a time."""
+    groups: dict[str, list[str]] = {}
+    for finding in assessment.transmissions:
+        if finding.exclusive:
+            groups.setdefault(finding.exclusive, []).append(finding.name)
+    return tuple(f"{group}: one at a time of {', '.join(names)}" for group, names in groups.items())
+
+
+def antennas(assessment: Assessment) -> Table:
+    """Feed impedances, states of the antenna, and remarks."""
+    rows = [
+        (
+            finding.name,
+            "\n".join(_impedance(*z) for z in finding.feed_impedances_ohm) or NOTHING,
+            "\n".join(finding.states) or NOTHING,
+            "\n".join(finding.notes) or NOTHING,
+        )
+        for finding in assessment.transmissions
+    ]
+    return Table(
+        ("transmission", "feed impedance", "states solved", "remarks"), tuple(rows), (20, 18, 20, 42)
+    )
+
+
+def conductors(assessment: Assessment) -> Table:
+    """What was solved: for each owner and role the number of wires, their radius, lowest and highest point."""
+    groups: dict[tuple[str, str, float], list] = {}
+    for wire in assessment.conductors:
+        groups.setdefault((wire.owner, wire.role, wire.radius_m), []).append(wire)
+    rows = [
+        (
+            owner,
+            role,
+            str(len(wires)),
+            f"{digits(2000 * radius)} mm",
+            f"{digits(min(_heights(wires)))} m",
+            f"{digits(max(_heights(wires)))} m",
+        )
+        for (owner, role, radius), wires in groups.items()
+    ]
+    return Table(
+        ("belongs to", "as", "wires", "wire diameter", "lowest point", "highest point"),
+        tuple(rows),
+        (36, 16, 9, 13, 13, 13),
+    )
+
+
+def quality(assessment: Assessment) -> Table:
+    """How far each solution may be trusted."""
+    rows = [
+        (
+            finding.name,
+            str(finding.unknowns),
+            _percent(finding.quality.power_balance),
+            _percent(finding.quality.mesh_change),
+            _percent(finding.quality.boundary_residual),
+            ("passed" if finding.quality.passed else "NOT PASSED")
+            + (f": {finding.quality.note}" if finding.quality.note else ""),
+        )
+        for finding in assessment.transmissions
+    ]
+    return Table(
+        ("transmission", "unknowns", "power balance", "mesh change", "boundary residual", "checks"),
+        tuple(rows),
+        (22, 11, 13, 13, 14, 27),
+    )
+
+
+def distances(assessment: Assessment) -> Table:
+    """Compliance distance and setback of each transmission alone."""
+    in_feet = feet(assessment)
+    rows = [
+        (
+            finding.name,
+            result.limits,
+            words.POPULATIONS[result.population],
+            metres(result.compliance_distance_m, in_feet),
+            metres(result.setback_m, in_feet),
+            result.note or NOTHING,
+        )
+        for finding in assessment.transmissions
+        for result in finding.results
+    ]
+    return Table(
+        ("transmission alone", "limits", "population", "compliance distance", "setback", "remark"),
+        tuple(rows),
+        (18, 13, 14, 14, 14, 27),
+    )
+
+
+def levels(assessment: Assessment) -> Table:
+    """Published levels as used."""
+    rows = [
+        (
+            f"{level.limits}\n{words.POPULATIONS[level.population]}",
+            megahertz(level.frequency_hz),
+            f"{words.EFFECTS[level.effect]}, {words.SCOPES[level.scope]}",
+            digits(level.electric_v_per_m),
+            digits(level.magnetic_a_per_m),
+            _density(level.power_density_w_per_m2, level.limits),
+            f"{minutes(level.averaging_time_s)}\nspatial {level.spatial}",
+            level.clause + ("" if level.verified else "\nNOT VERIFIED in print"),
+        )
+        for level in assessment.levels
+    ]
+    return Table(
+        ("limits", "frequency", "effect, scope", "E [V/m]", "H [A/m]", "S [W/m²]", "averaging", "clause"),
+        tuple(rows),
+        (15, 13, 15, 9, 9, 11, 13, 18),
+    )
+
+
+def limits(assessment: Assessment) -> Table:
+    """The documents."""
+    rows = [(limit.id, limit.title, limit.edition) for limit in assessment.limits]
+    return Table(("limits", "document", "edition"), tuple(rows), (15, 55, 30))
+
+
+def _heights(wires) -> list[float]:
+    return [point[2] for wire in wires for point in wire.points_m]
+
+
+def _density(density, limits_id) -> str:
+    """W/m2, and mW/cm2 where the document prints that."""
+    if density is None or not limits_id.startswith("us_"):
+        return digits(density)
+    return f"{digits(density)}\n({digits(density / 10)} mW/cm²)"
+
+
+def _ratio(ratio) -> str:
+    return NOTHING if ratio is None else digits(ratio)
+
+
+def _percent(value) -> str:
+    return "not known" if value is None else f"{digits(100 * value, 2)} %"
+
+
+def _impedance(real: float, imaginary: float) -> str:
+    return f"{real:.1f} {'-' if imaginary < 0 else '+'} j{abs(imaginary):.1f} Ω"
+
+
+def _cause(result) -> str:
+    return NOTHING if result.governing is None else result.governing.transmission
+
+
+def _governing(result) -> str:
+    if result.governing is None:
+        return NOTHING
+    g = result.governing
+    return f"{g.transmission}: {g.quantity}, {words.EFFECTS.get(g.effect, g.effect)}"
