@@ -1,0 +1,139 @@
+"""The words of drawings: limits, powers, planes and extents, from the assessment alone."""
+
+from math import atan2, degrees, hypot
+
+import shapely
+
+from exposure.assessment.model import Assessment, Boundary, TransmissionFinding
+
+POPULATIONS = {"general_public": "general public", "occupational": "occupational"}
+GENERAL_PUBLIC = "general_public"
+STANDING = "0–2 m above ground"
+
+
+def digits(value: float, count: int = 3) -> str:
+    """Significant digits, without an exponent where that is readable."""
+    if value == 0 or 1e-4 <= abs(value) < 1e6:
+        text = f"{float(f'{value:.{count}g}'):.6f}"
+        return text.rstrip("0").rstrip(".")
+    return f"{value:.{count - 1}e}"
+
+
+def duration(time: float) -> str:
+    """An averaging time [s]; zero is the instantaneous peak."""
+    if time == 0:
+        return "instantaneous"
+    return f"{digits(time / 60)} min" if time >= 60 else f"{digits(time)} s"
+
+
+def heights(bottom: float, top: float) -> str:
+    """The heights of an area. [m]"""
+    return f"{digits(bottom)} m" if bottom == top else f"{digits(bottom)}–{digits(top)} m"
+
+
+def limit_words(assessment: Assessment, limits: str, population: str) -> str:
+    """The limit set in words, for the title of a drawing."""
+    title = next((f"{x.title}, {x.edition}" for x in assessment.limits if x.id == limits), limits)
+    return f"{title}, {POPULATIONS[population]}"
+
+
+def levels_of(assessment: Assessment, limits: str, population: str):
+    """The levels that the limit set has for that population."""
+    return [x for x in assessment.levels if (x.limits, x.population) == (limits, population)]
+
+
+def clauses(assessment: Assessment, limits: str, population: str) -> str:
+    """The clauses of the levels, in printed order."""
+    found = dict.fromkeys(x.clause for x in levels_of(assessment, limits, population))
+    return "; ".join(found) or "no clause known"
+
+
+def averaging(assessment: Assessment, limits: str, population: str) -> str:
+    """The averaging times of the levels."""
+    times = sorted({x.averaging_time_s for x in levels_of(assessment, limits, population)})
+    return " and ".join(duration(time) for time in times) or "not known"
+
+
+def power_words(assessment: Assessment, limits: str, population: str, found: TransmissionFinding) -> str:
+    """Frequency and powers of a transmission, at the averaging times of the limit."""
+    times = {x.averaging_time_s for x in levels_of(assessment, limits, population)}
+    means = [
+        f"{digits(x.power_w)} W mean over {duration(x.averaging_time_s)}"
+        for x in found.average_powers
+        if x.averaging_time_s in times and x.averaging_time_s > 0
+    ]
+    parts = [
+        f"{digits(found.frequency_hz / 1e6, 6)} MHz",
+        f"transmitter {digits(found.peak_power_w)} W peak",
+        f"antenna {digits(found.accepted_power_w)} W peak",
+        *means,
+    ]
+    if found.exclusive:
+        parts.append("never together with others of its group")
+    return f"{found.name}: " + ", ".join(parts)
+
+
+def doubts(assessment: Assessment, limits: str, population: str) -> list[str]:
+    """Why the drawn line cannot be relied on: failed checks, boundaries not seen to end."""
+    found = [
+        f"The numerical solution of '{t.name}' did not pass its checks: do not rely on the line."
+        for t in assessment.transmissions
+        if not t.quality.passed
+    ]
+    for t in assessment.transmissions:
+        for result in t.results:
+            if (result.limits, result.population) == (limits, population) and None in (
+                result.setback_m,
+                result.compliance_distance_m,
+            ):
+                found.append(f"The zone of '{t.name}' was not seen to end: it may reach farther than drawn.")
+    return found
+
+
+def geometry(boundary: Boundary | None):
+    """The zone of a boundary as one shapely geometry, empty where the limit is not reached."""
+    polygons = boundary.polygons if boundary else ()
+    return shapely.union_all([shapely.Polygon(p.outline, p.holes).buffer(0) for p in polygons])
+
+
+def extent_words(zone, middle, where: str) -> str:
+    """How far a zone in plan reaches from the middle of the antennas, and towards where."""
+    if zone.is_empty:
+        return f"The limit is reached nowhere at {where}."
+    far, bearing = farthest(zone, middle)
+    west, south, east, north = zone.bounds
+    return (
+        f"At {where} the zone covers {digits(zone.area)} m²; largest extent {far:.1f} m towards {bearing:.0f} degrees "
+        f"from the middle of the antennas; east {west:.1f} to {east:.1f} m, north {south:.1f} to {north:.1f} m."
+    )
+
+
+def farthest(zone, middle) -> tuple[float, float]:
+    """Distance [m] and bearing [degrees from north] of the corner farthest from a point."""
+    corners = shapely.get_coordinates(zone)
+    east, north = max((corners - middle).tolist(), key=lambda d: hypot(*d))
+    return hypot(east, north), degrees(atan2(east, north)) % 360
+
+
+def area_words(assessment: Assessment, limits: str, population: str) -> list[tuple[str, str, str]]:
+    """Name, heights, and result of every area in the order of its number."""
+    rows = []
+    for area in assessment.areas:
+        result = next((r for r in area.results if r.limits == limits), None)
+        if area.population != population:
+            words = f"judged as {POPULATIONS[area.population]}"
+        elif result is None:
+            words = "not covered by this limit set: cannot be decided"
+        elif result.exposure_ratio is None:
+            words = f"exposure ratio not known: {result.verdict}"
+        else:
+            words = f"exposure ratio {digits(result.exposure_ratio)}: {result.verdict}"
+        rows.append((area.name, heights(area.bottom_m, area.top_m), words))
+    return rows
+
+
+def area_sentence(rows) -> str:
+    """The rows of areas as text."""
+    return " ".join(
+        f"Area {n}, {name}, {height}: {words}." for n, (name, height, words) in enumerate(rows, 1)
+    )
