@@ -2,7 +2,7 @@
 
 from pathlib import PurePath
 
-from reportlab.platypus import CondPageBreak
+from reportlab.platypus import CondPageBreak, KeepTogether
 
 from exposure.assessment.model import Assessment
 from exposure.outputs import figures, report_parts, tables, words
@@ -15,7 +15,7 @@ from exposure.outputs.result_file import dumps
 from exposure.outputs.whole_files import write_whole
 
 WARNINGS = "Warnings about this site"
-ROOM_FOR_A_SECTION = 70  # points that must be left on a page to begin one
+ROOM_FOR_A_SECTION = 90  # points that must be left on a page to begin one
 
 
 def write_report(assessment: Assessment, path):
@@ -56,9 +56,16 @@ def _story(assessment: Assessment, drawn, paper: Paper) -> list:
     story = [*title(assessment), *verdict_frame(assessment, paper.frame[0], warnings_at)]
     for name, parts in sections:
         number = numbered[name]
-        heading = Heading(marked(f"{number}  {name}"), SECTION, 0, f"section{number}")
-        story += [CondPageBreak(ROOM_FOR_A_SECTION), heading, *parts]
+        heading = Heading(marked(f"{number}\u2002{name}"), SECTION, 0, f"section{number}")
+        story += [CondPageBreak(ROOM_FOR_A_SECTION), *_headed(heading, parts)]
     return story
+
+
+def _headed(heading, parts) -> list:
+    """A heading stays with what follows where that is kept together itself."""
+    if isinstance(parts[0], KeepTogether):
+        return [KeepTogether([heading, parts[0]]), *parts[1:]]
+    return [heading, *parts]
 
 
 def _sections(assessment: Assessment, drawn, paper: Paper):

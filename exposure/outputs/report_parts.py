@@ -9,6 +9,7 @@ from exposure.assessment.model import Assessment
 from exposure.outputs import tables, words
 from exposure.outputs.formats import metres
 from exposure.outputs.report_style import (
+    BODY,
     CAPTION,
     CELL,
     INPUT,
@@ -25,6 +26,8 @@ from exposure.outputs.report_tables import paper_table
 from exposure.outputs.vector_figures import VectorFigure
 
 CAPTION_ROOM = 150  # points kept below a figure for its words
+ROOM_FOR_A_PART = 70  # points that must be left on a page to begin one
+SHORT = 200  # points: what is not longer stays on one page
 LINE_OF_INPUT = 112  # characters
 
 
@@ -43,7 +46,7 @@ class Picture:
 
 
 def figure_parts(pictures, room: tuple[float, float]) -> list:
-    """Each picture at its scale with title, caption and words, kept together; room: width, height [points]."""
+    """Each picture at its scale with its words, kept together; room: width, height [points]."""
     if not pictures:
         return [paragraph("There are no figures: nothing was found to draw.")]
     parts = []
@@ -63,7 +66,7 @@ def figure_parts(pictures, room: tuple[float, float]) -> list:
         captions = [
             paragraph(f"Figure {number}. {picture.title}", CAPTION),
             paragraph(picture.caption + (reduced or scale), TEXT),
-            paragraph(f"In words: {picture.alt}", NOTE),
+            *([paragraph(f"In words: {picture.alt}", NOTE)] if picture.alt else []),
         ]
         parts.append(KeepTogether([figure, *captions, Spacer(1, 8)]))
     return parts
@@ -101,20 +104,18 @@ def property_words(assessment: Assessment) -> list:
             paragraph("The site file states no property: whether the zone stays on it was not looked at.")
         ]
     told = {True: "yes", False: "NO", None: "cannot be decided"}
-    margin = (
-        "none: no distance was found"
-        if land.least_margin_m is None
-        else metres(land.least_margin_m, tables.feet(assessment))
-        + (" (beyond it)" if land.least_margin_m < 0 else "")
-    )
-    return bullets(
-        [
-            f"The zone at 0–2 m above ground (general public, all transmissions) stays inside: {told[land.inside]}",
-            f"The zone at every height stays inside: {told[land.inside_at_all_heights]}",
-            f"Least distance from the zone to the edge of the property: {margin}",
-            *([land.reason] if land.reason else []),
-        ]
-    )
+    facts = [
+        f"The zone at 0–2 m above ground stays on the property: {told[land.inside]}.",
+        f"The zone at every height stays above the property: {told[land.inside_at_all_heights]}.",
+    ]
+    if land.least_margin_m is not None:
+        side = "beyond its edge" if land.least_margin_m < 0 else "inside its edge, at the closest place"
+        distance = metres(abs(land.least_margin_m), tables.feet(assessment))
+        facts.append(f"The zone at 0–2 m above ground reaches to {distance} {side}.")
+    return [
+        paragraph("The zone is where all transmissions together reach a limit of the general public."),
+        *bullets([*facts, *([land.reason] if land.reason else [])]),
+    ]
 
 
 def distances(assessment: Assessment, width: float) -> list:
@@ -142,8 +143,8 @@ def station(assessment: Assessment, width: float) -> list:
     )
     lines = (
         f"Ground: {site.ground or 'not stated'}.",
-        f"Origin of the coordinates: {place}. East, north and up are in metres from it; heights are above local ground, "
-        "north is true north.",
+        f"Origin of the coordinates: {place}. East, north and up are in metres from it; heights are above "
+        "local ground, north is true north.",
     )
     return [*bullets(lines), *parts]
 
@@ -181,7 +182,7 @@ def signature(assessment: Assessment, width: float) -> list:
     table = Table(
         lines,
         colWidths=[0.46 * width, 0.08 * width, 0.46 * width],
-        style=[*rules, ("LEFTPADDING", (0, 0), (-1, -1), 0)],
+        style=[*rules, ("LEFTPADDING", (0, 0), (-1, -1), 0), ("FONTNAME", (0, 0), (-1, -1), BODY)],
     )
     return [
         paragraph(words.VALIDITY),
@@ -189,7 +190,7 @@ def signature(assessment: Assessment, width: float) -> list:
         KeepTogether(
             [
                 paragraph(
-                    f"Verdict: {assessment.verdict}. Site: {site.name}. Date of the site file: {site.date or 'not stated'}."
+                    f"Site: {site.name}. Verdict: {assessment.verdict}. Date: {site.date or 'not stated'}."
                 ),
                 paragraph(words.STATEMENT),
                 table,
@@ -228,5 +229,8 @@ def _numbered(number: int, line: str) -> list[str]:
 
 
 def _part(heading: str, content: list) -> list:
-    """A small heading over its content; neither where there is no content."""
-    return [Paragraph(marked(heading), PART), *content] if content else []
+    """A small heading over its content, together where that is short; neither where there is no content."""
+    if not content:
+        return []
+    whole = [Paragraph(marked(heading), PART), *content]
+    return [CondPageBreak(ROOM_FOR_A_PART), KeepTogether(whole, maxHeight=SHORT)]

@@ -20,7 +20,7 @@ INK, GREY, PALE, RULE = HexColor("#000000"), HexColor("#555555"), HexColor("#ece
 
 
 def register_fonts():
-    """DejaVu (free licence, comes with matplotlib) for every letter of the report, so that all is embedded."""
+    """DejaVu (free licence, comes with matplotlib) for every letter, so that all is embedded."""
     directory = Path(matplotlib.get_data_path()) / "fonts" / "ttf"
     for name, file in FILES.items():
         if name not in pdfmetrics.getRegisteredFontNames():
@@ -40,8 +40,8 @@ def _style(name: str, size: float, font: str = BODY, **more) -> ParagraphStyle:
 TITLE = _style("title", 16, BOLD, spaceAfter=2)
 TEXT = _style("text", 8.5, spaceAfter=4)
 NOTE = _style("note", 7.5, spaceAfter=4, textColor=GREY)
-SECTION = _style("section", 11.5, BOLD, spaceBefore=11, spaceAfter=4, keepWithNext=1)
-PART = _style("part", 8.5, BOLD, spaceBefore=6, spaceAfter=3, keepWithNext=1)
+SECTION = _style("section", 11.5, BOLD, spaceBefore=11, spaceAfter=4)
+PART = _style("part", 8.5, BOLD, spaceBefore=6, spaceAfter=3)
 CAPTION = _style("caption", 8.5, BOLD, spaceBefore=3, spaceAfter=2)
 VERDICT = _style("verdict", 17, BOLD, spaceAfter=5)
 CELL = _style("cell", 7)

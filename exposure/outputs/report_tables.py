@@ -2,9 +2,10 @@
 
 from reportlab.platypus import LongTable
 
-from exposure.outputs.report_style import CELL, HEADING_CELL, INK, PALE, RULE, paragraph
+from exposure.outputs.report_style import BODY, CELL, HEADING_CELL, INK, PALE, RULE, paragraph
 
 LOOK = [
+    ("FONTNAME", (0, 0), (-1, -1), BODY),
     ("VALIGN", (0, 0), (-1, -1), "TOP"),
     ("BACKGROUND", (0, 0), (-1, 0), PALE),
     ("LINEABOVE", (0, 0), (-1, 0), 0.8, INK),

@@ -7,11 +7,11 @@ from exposure.outputs import words
 from exposure.outputs.formats import digits, share
 from exposure.outputs.report_pages import Heading
 from exposure.outputs.report_style import (
+    BODY,
     INK,
     NOTE,
     PALE,
     PART,
-    TEXT,
     TITLE,
     VERDICT,
     bullets,
@@ -41,7 +41,11 @@ def title(assessment: Assessment) -> list:
     return [
         paragraph("Radio-frequency exposure assessment", NOTE),
         paragraph(site.name, TITLE),
-        paragraph("   ·   ".join(facts), TEXT),
+        paragraph(" · ".join(facts)),
+        *(
+            paragraph(f"Limits: {limit.id}: {limit.title} ({limit.edition})", NOTE)
+            for limit in assessment.limits
+        ),
     ]
 
 
@@ -64,6 +68,7 @@ def verdict_frame(assessment: Assessment, width: float, warnings_at: str) -> lis
         )
     heavy = 1.0 if assessment.verdict == "within limits" else 2.5
     look = [
+        ("FONTNAME", (0, 0), (-1, -1), BODY),
         ("BOX", (0, 0), (-1, -1), heavy, INK),
         ("LEFTPADDING", (0, 0), (-1, -1), 10),
         ("RIGHTPADDING", (0, 0), (-1, -1), 10),
@@ -73,6 +78,9 @@ def verdict_frame(assessment: Assessment, width: float, warnings_at: str) -> lis
     if assessment.verdict != "within limits":
         look.append(("BACKGROUND", (0, 0), (-1, 0), PALE))
     narrow = [("TOPPADDING", (0, 1), (-1, -1), 0), ("BOTTOMPADDING", (0, 0), (-1, -2), 0)]
+    headings = [row for row, flowable in enumerate(inside) if getattr(flowable, "style", None) is PART]
+    narrow += [("TOPPADDING", (0, row), (0, row), 6) for row in headings]
+    narrow += [("BOTTOMPADDING", (0, 0), (0, 0), 9), ("TOPPADDING", (0, 1), (0, 1), 5)]
     rows = [[flowable] for flowable in inside]
     return [Table(rows, colWidths=[width], style=TableStyle(narrow + look), spaceBefore=8, spaceAfter=6)]
 
@@ -85,20 +93,25 @@ def worst_places(assessment: Assessment) -> tuple[str, ...]:
         known = [(area, r) for area, r in results if r.upper_bound_ratio is not None]
         if known:
             found.append(_worst(limits, *max(known, key=lambda pair: pair[1].upper_bound_ratio)))
-        open_ = [area.name for area, r in results if r.upper_bound_ratio is None]
-        if open_:
-            found.append(f"{limits}: no number for {', '.join(open_)}")
+        found += [
+            f"{limits}: {area.name}: no number; {r.verdict}"
+            for area, r in results
+            if r.upper_bound_ratio is None
+        ]
     return tuple(found)
 
 
 def _worst(limits, area, result) -> str:
     upper = result.upper_bound_ratio
-    number = (
-        f"{limits}: {area.name}, exposure ratio {digits(result.exposure_ratio)}, upper bound {digits(upper)}"
+    found = (
+        f"{limits}: {area.name}: exposure ratio {digits(result.exposure_ratio)}, {digits(upper)} with "
+        "numerical error; 1 is the limit"
     )
     if upper >= 1:
-        return f"{number}; the limit is 1: {share(upper)}"
-    return f"{number}; the limit is 1: {share(upper)} is used, {digits(100 * (1 - upper))} % is left"
+        return f"{found}, so it is used {digits(upper)} times"
+    if result.verdict != "within limits":
+        return f"{found}, but this number alone does not decide"
+    return f"{found}, so {share(upper)} is used and {digits(100 * (1 - upper))} % is left"
 
 
 def _decision(site) -> str:

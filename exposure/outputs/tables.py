@@ -16,6 +16,8 @@ from exposure.outputs.formats import (
     watts,
 )
 
+SMALL = 1e-5  # of a check that allows a percent
+
 
 @dataclass(frozen=True)
 class Table:
@@ -34,7 +36,7 @@ def feet(assessment: Assessment) -> bool:
 def areas_in_short(assessment: Assessment) -> Table:
     """For the first page: each area and set of limits, share and verdict."""
     rows = [
-        (str(number), area.name, result.limits, share(result.exposure_ratio), _cause(result), result.verdict)
+        (str(number), area.name, result.limits, _share(result), _cause(result), result.verdict)
         for number, area in enumerate(assessment.areas, 1)
         for result in area.results
     ]
@@ -49,7 +51,7 @@ def areas(assessment: Assessment, limits_id: str) -> Table:
     """Every area by one set of limits: ratios, fields, place, cause."""
     rows = [
         (
-            f"{number} {area.name}\n{heights(area.bottom_m, area.top_m)}, {words.POPULATIONS[area.population]}",
+            f"{number} {area.name}\n{_where_who(area)}",
             _ratio(result.exposure_ratio),
             _ratio(result.upper_bound_ratio),
             _ratio(result.body_average_ratio),
@@ -122,8 +124,7 @@ def transmissions(assessment: Assessment) -> Table:
             watts(finding.peak_power_w),
             f"{digits(finding.line_loss_db)} dB",
             watts(finding.accepted_power_w),
-            "\n".join(f"{watts(p.power_w)} in {minutes(p.averaging_time_s)}" for p in finding.average_powers)
-            or NOTHING,
+            "\n".join(map(_mean, finding.average_powers)) or NOTHING,
         )
         for finding in assessment.transmissions
     ]
@@ -145,7 +146,8 @@ def transmissions(assessment: Assessment) -> Table:
 def power_steps(finding: TransmissionFinding) -> Table:
     """The way from the transmitter to the mean power at the antenna, each step with its source."""
     rows = [
-        (step.text, digits(step.factor), watts(step.power_w), step.source) for step in finding.power_steps
+        (step.text, digits(step.factor), watts(step.power_w), step.source)
+        for step in dict.fromkeys(finding.power_steps)
     ]
     return Table(("step", "factor", "power after it", "source"), tuple(rows), (33, 9, 13, 45))
 
@@ -176,7 +178,7 @@ def antennas(assessment: Assessment) -> Table:
 
 
 def conductors(assessment: Assessment) -> Table:
-    """What was solved: for each owner and role the number of wires, their radius, lowest and highest point."""
+    """What was solved: wires of each owner and role, their thickness, lowest and highest point."""
     groups: dict[tuple[str, str, float], list] = {}
     for wire in assessment.conductors:
         groups.setdefault((wire.owner, wire.role, wire.radius_m), []).append(wire)
@@ -269,6 +271,15 @@ def limits(assessment: Assessment) -> Table:
     return Table(("limits", "document", "edition"), tuple(rows), (15, 55, 30))
 
 
+def _where_who(area) -> str:
+    return f"{heights(area.bottom_m, area.top_m)}, {words.POPULATIONS[area.population]}"
+
+
+def _mean(average) -> str:
+    window = f"over {minutes(average.averaging_time_s)}" if average.averaging_time_s else "instantaneous"
+    return f"{watts(average.power_w)} {window}"
+
+
 def _heights(wires) -> list[float]:
     return [point[2] for wire in wires for point in wire.points_m]
 
@@ -280,12 +291,18 @@ def _density(density, limits_id) -> str:
     return f"{digits(density)}\n({digits(density / 10)} mW/cm²)"
 
 
+def _share(result) -> str:
+    return "no number" if result.exposure_ratio is None else share(result.exposure_ratio)
+
+
 def _ratio(ratio) -> str:
     return NOTHING if ratio is None else digits(ratio)
 
 
 def _percent(value) -> str:
-    return "not known" if value is None else f"{digits(100 * value, 2)} %"
+    if value is None:
+        return "not known"
+    return f"{digits(100 * value, 2)} %" if abs(value) >= SMALL or value == 0 else "below 0.001 %"
 
 
 def _impedance(real: float, imaginary: float) -> str:
