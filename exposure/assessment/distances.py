@@ -11,8 +11,8 @@ from dataclasses import dataclass
 
 import numpy as np
 
+from exposure.assessment.climbs import Climbs
 from exposure.assessment.islands import separate
-from exposure.assessment.panels import sampled, strengths_of
 from exposure.assessment.shells import HEAD, around, aside, axes, ball, beneath
 from exposure.assessment.strengths import FieldStrengths
 
@@ -27,13 +27,10 @@ COARSE = ((0.25, 1.0), (0.05, 2.0), (0.0, 3.0))
 STEP = 0.25  # of the distance from shell to shell
 OVERSHOOT = 1.3  # a lobe may be that much higher than its highest sample
 LEAST_SEED = 0.5  # ratio; a power of distance is not trusted further than that
-BOXES = (0.30, 0.10, 0.03, 0.01)  # half sides of the boxes around the best place, of the distance
-LEAST_BOX = 1e-4  # m, half side
+BOXES = (0.30, 0.10, 0.03, 0.01)  # half sides of the boxes around the best places, of the distance
+PRECISE = (0.10, 0.03, 0.006)  # of the distance, by each size but the last: places nearer in by more drop out
 BESIDE = 0.5  # m: at other metal, boxes as if the conductors were that far
 BALLS = np.array([0.03, 0.06, 0.12, 0.24, 0.48])  # m, radii of places looked at there
-CLIMBS = 6
-BOX_ORDER = 3
-BOX_LOOKS = 13
 SEEDS = 4
 
 
@@ -57,6 +54,16 @@ class Distance:
     position: tuple[float, float, float] | None
     islands: tuple
     bounded: bool
+
+
+@dataclass(frozen=True)
+class _Lobes:
+    """Of one ratio function: the farthest sample that reaches one, places that may reach farther, and
+    the power of distance with which the ratio falls there."""
+
+    known: tuple
+    seeds: tuple
+    slope: float
 
 
 NOWHERE = np.zeros((0, 3))
@@ -103,6 +110,7 @@ class _Search:
     def __init__(self, strengths, ratios, distance, shell, top, nearest, innermost, beside):
         self.strengths, self.ratios, self.distance = strengths, ratios, distance
         self.shell, self.innermost, self.top, self.nearest = shell, innermost, top, nearest
+        self.climbs = Climbs(strengths.values, ratios, distance, top)
         self.beside = self._measured(beside)
         box = strengths.box
         height = box[1, 2]
@@ -132,13 +140,14 @@ class _Search:
                 seen.append((points, self.distance(points), ratios))
                 for i in range(len(self.ratios)):
                     if found[i] is None and ratios[i].max() >= 1:
-                        found[i] = self._unbounded() if distance >= farthest else self._locate(i, seen)
+                        found[i] = self._unbounded() if distance >= farthest else self._lobes(i, seen)
             open_ = [i for i, f in enumerate(found) if f is None]
             most = max((ratios[i].max() for i in open_), default=0.0) if len(points) else 0.0
             coarse = next(wide for least, wide in COARSE if most >= least)
             distance = self._next(distance, coarse)
         if any(f is None for f in found):
             found = self._innermost(found)
+        found = self._located(found)
         return tuple(self._with_metal(i, f) for i, f in enumerate(found))
 
     def _innermost(self, found):
@@ -171,9 +180,9 @@ class _Search:
         top = int(np.argmax(np.where(ratios[i] >= 1, distances, 0.0)))
         place, best = near[top], (distances[top], near[top])
         for size in BOXES:
-            climbed = self._climb(i, place, size * BESIDE)
-            if climbed[1] > 0:
-                place, best = climbed[0], max(best, (climbed[1], climbed[0]), key=lambda lobe: lobe[0])
+            places, reached = self.climbs.farthest([i], place, [size * BESIDE])
+            if reached[0] > 0:
+                place, best = places[0], max(best, (reached[0], places[0]), key=lambda lobe: lobe[0])
         return best
 
     def _measured(self, points):
@@ -203,24 +212,58 @@ class _Search:
         values = self.strengths.values(points)
         return points, np.array([r(values) for r in self.ratios])
 
-    def _locate(self, i, seen):
-        """The place of ratio function i, from the shells seen so far."""
+    def _lobes(self, i, seen):
+        """Where ratio function i may reach one farthest out, from the shells seen so far."""
         slope = self._slope(i, seen)
         points = np.concatenate([s[0] for s in seen])
         distances = np.concatenate([s[1] for s in seen])
         ratios = np.concatenate([s[2][i] for s in seen])
         reached = distances * np.clip(ratios, 1e-9, OVERSHOOT**4) ** (1 / slope)
         hopeful = (ratios > LEAST_SEED) & (reached * OVERSHOOT ** (1 / slope) >= reached[ratios >= 1].max())
-        seeds = self._apart(points[hopeful], distances[hopeful], reached[hopeful])
         known = int(np.argmax(np.where(ratios >= 1, distances, 0.0)))
         if not np.isfinite(ratios[known]):
             return self._contact(points[known], distances[known], seen)
-        climbed = [self._climb(i, point, BOXES[0] * d) for point, d in seeds]
-        lobes = [self._finer(i, *lobe, slope) for lobe in climbed if lobe[1] > 0]
-        lobes.append((distances[known], points[known]))
-        best, *others = sorted(lobes, key=lambda lobe: -lobe[0])
-        islands = separate(self.strengths.values, self.ratios[i], self.strengths.foot, best, others)
-        return Distance(float(best[0]), _place(best[1]), islands, True)
+        seeds = self._apart(points[hopeful], distances[hopeful], reached[hopeful])
+        return _Lobes((distances[known], points[known]), tuple(seeds), slope)
+
+    def _located(self, found):
+        """Distances from lobes; all take their steps together."""
+        which = [i for i, f in enumerate(found) if isinstance(f, _Lobes) for _ in f.seeds]
+        seeds = [seed for f in found if isinstance(f, _Lobes) for seed in f.seeds]
+        lobes = (
+            np.array(which, int),
+            np.array([p for p, _ in seeds]).reshape(-1, 3),
+            np.array([d for _, d in seeds]),
+        )
+        for size, precise in zip(BOXES, (*PRECISE, 0.0), strict=True):
+            lobes = self._nearer(*lobes, size, precise)
+        which, places, distances = lobes
+        _, _, ratios = self._measured(places)
+        result = list(found)
+        for i, f in ((i, f) for i, f in enumerate(found) if isinstance(f, _Lobes)):
+            mine = np.flatnonzero(which == i)
+            outwards = np.clip(ratios[i][mine], 0.5, 2.0) ** (1 / f.slope) if len(mine) else 1.0
+            ends = [f.known, *zip(distances[mine] * outwards, places[mine], strict=True)]
+            best, *others = sorted(ends, key=lambda lobe: -lobe[0])
+            islands = separate(self.strengths.values, self.ratios[i], self.strengths.foot, best, others)
+            result[i] = Distance(float(best[0]), _place(best[1]), islands, True)
+        return result
+
+    def _nearer(self, which, places, distances, size, precise):
+        """Places after boxes of one size; those of a ratio function that are surely nearer in drop out.
+
+        A small box beside the line may not see it: then the place from the larger box stands.
+        """
+        climbed, reached = self.climbs.farthest(which, places, size * distances)
+        seen = reached > 0
+        if size == BOXES[0]:
+            which, places, distances = which[seen], climbed[seen], reached[seen]
+        else:
+            places, distances = np.where(seen[:, None], climbed, places), np.where(seen, reached, distances)
+        best = np.zeros(len(self.ratios))
+        np.maximum.at(best, which, distances)
+        keep = distances >= (1 - precise) * best[which] if precise else np.ones(len(which), bool)
+        return which[keep], places[keep], distances[keep]
 
     def _contact(self, point, distance, seen):
         """The ratio reaches one only within three radii: the next shell outside is an upper bound."""
@@ -245,52 +288,6 @@ class _Search:
             if len(chosen) == SEEDS:
                 break
         return chosen
-
-    def _finer(self, i, place, distance, slope):
-        """Smaller boxes around a place, then one step outwards by the true field."""
-        for size in BOXES[1:]:
-            nearer = self._climb(i, place, size * distance)
-            if nearer[1] <= 0:  # a small box beside the line does not see it: the last one stands
-                break
-            place, distance = nearer
-        ratio = float(self.ratios[i](self.strengths.values(place[None]))[0])
-        return distance * np.clip(ratio, 0.5, 2.0) ** (1 / slope), place
-
-    def _climb(self, i, centre, half):
-        """Boxes of one size, until the farthest place that reaches one is within the box."""
-        for _ in range(CLIMBS):
-            place, distance = self._box(i, centre, half)
-            moved = np.abs(place - centre).max()
-            centre = place
-            if moved < 0.99 * half:
-                break
-        return place, distance
-
-    def _box(self, i, centre, half):
-        """The farthest place around a box where the interpolated ratio is one, and its distance.
-
-        From every place looked at that reaches one, the line of one is sought outwards along the
-        slope of the ratio, at most one look farther.  Where the ratio is below one everywhere: the
-        place where it is greatest, and 0.
-        """
-        half = max(half, LEAST_BOX)
-        lower, upper = centre - half, centre + half
-        lower[2] = np.clip(lower[2], 0.0, max(self.top - half, 0.0))
-        upper[2] = min(max(upper[2], half), self.top)
-        panel = sampled(self.strengths.values, lower[None], upper[None], (BOX_ORDER,) * 3)
-        axes = [np.linspace(a, b, BOX_LOOKS) for a, b in zip(lower, upper, strict=True)]
-        points = np.stack(np.meshgrid(*axes, indexing="ij"), axis=-1)
-        ratio = self.ratios[i](strengths_of(panel.grid((BOX_LOOKS,) * 3).reshape(points[..., 0].size, -1)))
-        logs = np.log(np.clip(ratio, 1e-9, 1e9)).reshape(points.shape[:3])
-        distances = self.distance(points.reshape(-1, 3)).reshape(logs.shape)
-        outwards = np.stack(np.gradient(distances, *axes), axis=-1)
-        falling = -(outwards * np.stack(np.gradient(logs, *axes), axis=-1)).sum(axis=-1)
-        look = 2 * half / (BOX_LOOKS - 1)
-        further = np.clip(logs / np.maximum(falling, logs.clip(1e-12) / look), 0.0, look)
-        reached = np.where(logs >= 0, distances + further, 0.0)
-        top = np.unravel_index(np.argmax(reached if reached.any() else logs), logs.shape)
-        place = points[top] + (further[top] if reached.any() else 0.0) * outwards[top]
-        return np.array([*place[:2], np.clip(place[2], 0.0, self.top)]), float(reached[top])
 
 
 def _place(point):
