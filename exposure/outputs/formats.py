@@ -1,5 +1,7 @@
 """Numbers as people read them.  Unknown values (None) are said to be so."""
 
+import math
+
 FOOT = 0.3048  # m, exactly
 NOTHING = "–"
 
@@ -17,13 +19,22 @@ def digits(value: float | None, count: int = 3) -> str:
     return text.rstrip("0").rstrip(".")
 
 
+def computed(value: float | None, count: int = 3) -> str:
+    """A computed number with all its significant digits, zeros at the end kept."""
+    if value is None or value == 0 or not 1e-4 <= abs(value) < 1e6:
+        return digits(value, count)
+    rounded = float(f"{value:.{count}g}")
+    places = count - 1 - math.floor(math.log10(abs(rounded)))
+    return f"{rounded:.{max(0, places)}f}"
+
+
 def share(ratio: float | None) -> str:
     """Exposure ratio as a share of the limit: percent below the limit, a multiple above."""
     if ratio is None:
         return "not known"
     if ratio >= 1:
-        return f"{digits(ratio)} times the limit"
-    return "below 0.01 % of the limit" if ratio < 1e-4 else f"{digits(100 * ratio)} % of the limit"
+        return f"{computed(ratio)} times the limit"
+    return "below 0.01 % of the limit" if ratio < 1e-4 else f"{computed(100 * ratio)} % of the limit"
 
 
 def metres(value: float | None, feet: bool = False) -> str:

@@ -56,7 +56,7 @@ def _story(assessment: Assessment, drawn, paper: Paper) -> list:
     story = [*title(assessment), *verdict_frame(assessment, paper.frame[0], warnings_at)]
     for name, parts in sections:
         number = numbered[name]
-        heading = Heading(marked(f"{number}\u2002{name}"), SECTION, 0, f"section{number}")
+        heading = Heading(marked(f"{number}. {name}"), SECTION, 0, f"section{number}")
         story += [CondPageBreak(ROOM_FOR_A_SECTION), *_headed(heading, parts)]
     return story
 

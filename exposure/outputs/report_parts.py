@@ -16,7 +16,6 @@ from exposure.outputs.report_style import (
     MONO,
     NOTE,
     PART,
-    TEXT,
     bullets,
     drawable,
     marked,
@@ -27,13 +26,17 @@ from exposure.outputs.vector_figures import VectorFigure
 
 CAPTION_ROOM = 150  # points kept below a figure for its words
 ROOM_FOR_A_PART = 70  # points that must be left on a page to begin one
-SHORT = 200  # points: what is not longer stays on one page
+NOT_REDUCED = 0.999  # a part in a thousand is less than what paper shrinks
+SHORT = 260  # points: what is not longer stays on one page
 LINE_OF_INPUT = 112  # characters
 
 
 @dataclass(frozen=True)
 class Picture:
-    """A figure as the report takes it: a one-page vector PDF with its size [mm], scale and words."""
+    """A figure as the report takes it: a one-page vector PDF with its size [mm] and words.
+
+    scale : 200 for 1:200, None where it has none.
+    """
 
     name: str
     title: str
@@ -41,7 +44,7 @@ class Picture:
     alt: str
     width_mm: float
     height_mm: float
-    scale: str
+    scale: float | None
     pdf: bytes
 
 
@@ -55,25 +58,20 @@ def figure_parts(pictures, room: tuple[float, float]) -> list:
             f"figure{number}", picture.pdf, picture.width_mm, picture.height_mm, picture.alt
         )
         figure = figure.reduced_to(room[0], room[1] - CAPTION_ROOM)
-        reduced = (
-            f" Reduced to {100 * figure.reduction:.0f} %: use the scale bar."
-            if figure.reduction < 0.999
-            else ""
-        )
-        scale = (
-            f" Scale {_scale(picture.scale)} on paper that is printed at full size." if picture.scale else ""
-        )
         captions = [
-            paragraph(f"Figure {number}. {picture.title}", CAPTION),
-            paragraph(picture.caption + (reduced or scale), TEXT),
+            Paragraph(f"<b>Figure {number}.</b> {marked(_caption(picture, figure.reduction))}", CAPTION),
             *([paragraph(f"In words: {picture.alt}", NOTE)] if picture.alt else []),
         ]
         parts.append(KeepTogether([figure, *captions, Spacer(1, 8)]))
     return parts
 
 
-def _scale(scale) -> str:
-    return scale if isinstance(scale, str) else f"1:{scale:g}"
+def _caption(picture: Picture, reduction: float) -> str:
+    """The caption, and what became of the scale."""
+    if reduction < NOT_REDUCED:
+        return f"{picture.caption} Drawn at {100 * reduction:.0f} % of its size: use the scale bar."
+    scale = "" if picture.scale is None else f"1:{picture.scale:g}"
+    return picture.caption if scale in picture.caption else f"{picture.caption} Scale {scale} at full size."
 
 
 def areas(assessment: Assessment, width: float) -> list:

@@ -4,7 +4,7 @@ from reportlab.platypus import Table, TableStyle
 
 from exposure.assessment.model import Assessment
 from exposure.outputs import words
-from exposure.outputs.formats import digits, share
+from exposure.outputs.formats import computed, digits, share
 from exposure.outputs.report_pages import Heading
 from exposure.outputs.report_style import (
     BODY,
@@ -104,11 +104,11 @@ def worst_places(assessment: Assessment) -> tuple[str, ...]:
 def _worst(limits, area, result) -> str:
     upper = result.upper_bound_ratio
     found = (
-        f"{limits}: {area.name}: exposure ratio {digits(result.exposure_ratio)}, {digits(upper)} with "
+        f"{limits}: {area.name}: exposure ratio {computed(result.exposure_ratio)}, {computed(upper)} with "
         "numerical error; 1 is the limit"
     )
     if upper >= 1:
-        return f"{found}, so it is used {digits(upper)} times"
+        return f"{found}, so it is used {computed(upper)} times"
     if result.verdict != "within limits":
         return f"{found}, but this number alone does not decide"
     return f"{found}, so {share(upper)} is used and {digits(100 * (1 - upper))} % is left"

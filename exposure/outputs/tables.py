@@ -6,6 +6,7 @@ from exposure.assessment.model import Assessment, TransmissionFinding
 from exposure.outputs import words
 from exposure.outputs.formats import (
     NOTHING,
+    computed,
     digits,
     heights,
     megahertz,
@@ -55,8 +56,8 @@ def areas(assessment: Assessment, limits_id: str) -> Table:
             _ratio(result.exposure_ratio),
             _ratio(result.upper_bound_ratio),
             _ratio(result.body_average_ratio),
-            digits(result.electric_v_per_m),
-            digits(result.magnetic_a_per_m),
+            computed(result.electric_v_per_m),
+            computed(result.magnetic_a_per_m),
             place(result.position_m),
             _governing(result),
             result.verdict,
@@ -250,8 +251,8 @@ def levels(assessment: Assessment) -> Table:
             f"{level.limits}\n{words.POPULATIONS[level.population]}",
             megahertz(level.frequency_hz),
             f"{words.EFFECTS[level.effect]}, {words.SCOPES[level.scope]}",
-            digits(level.electric_v_per_m),
-            digits(level.magnetic_a_per_m),
+            computed(level.electric_v_per_m),
+            computed(level.magnetic_a_per_m),
             _density(level.power_density_w_per_m2, level.limits),
             f"{minutes(level.averaging_time_s)}\nspatial {level.spatial}",
             level.clause + ("" if level.verified else "\nNOT VERIFIED in print"),
@@ -287,8 +288,8 @@ def _heights(wires) -> list[float]:
 def _density(density, limits_id) -> str:
     """W/m2, and mW/cm2 where the document prints that."""
     if density is None or not limits_id.startswith("us_"):
-        return digits(density)
-    return f"{digits(density)}\n({digits(density / 10)} mW/cm²)"
+        return computed(density)
+    return f"{computed(density)}\n({computed(density / 10)} mW/cm²)"
 
 
 def _share(result) -> str:
@@ -296,7 +297,7 @@ def _share(result) -> str:
 
 
 def _ratio(ratio) -> str:
-    return NOTHING if ratio is None else digits(ratio)
+    return NOTHING if ratio is None else computed(ratio)
 
 
 def _percent(value) -> str:
