@@ -94,25 +94,52 @@ class HalfSpace:
             np.repeat(points, shape[1], axis=0), np.tile(sources.points, (shape[0], 1))
         )
         rest = {name: values.reshape(shape) for name, values in self.reflection.fields(rho, zeta).items()}
+        rest["f_rho"] = rest["f_rho_over_rho"] * rho.reshape(shape)
         x, y = unit[:, 0].reshape(shape), unit[:, 1].reshape(shape)
-        f_over_rho = rest["f_rho_over_rho"]
-        f_rho = f_over_rho * rho.reshape(shape)
-        mx, my, mz = sources.moments.T
-        charge = sources.slopes / self.k**2
-        electric = [
-            rest["k_xx"] @ mx - (f_rho * x) @ mz + (rest["k_phi_rho"] * x) @ charge,
-            rest["k_xx"] @ my - (f_rho * y) @ mz + (rest["k_phi_rho"] * y) @ charge,
-            rest["k_zz"] @ mz + (f_rho * x) @ mx + (f_rho * y) @ my + rest["k_phi_zeta"] @ charge,
-        ]
-        turn = rest["laplacian_f"] - 2 * f_over_rho
-        xx, xy, yy = f_over_rho + turn * x * x, turn * x * y, f_over_rho + turn * y * y
-        magnetic = [
-            (rest["tm_rho"] * y) @ mz + xy @ mx + (yy - rest["k_xx_zeta"]) @ my,
-            -(rest["tm_rho"] * x) @ mz - (xx - rest["k_xx_zeta"]) @ mx - xy @ my,
-            (rest["k_xx_rho"] * x) @ my - (rest["k_xx_rho"] * y) @ mx,
-        ]
+        parts = [_of_charges(rest, x, y, sources.slopes / self.k**2)]
+        if sources.moments[:, :2].any():
+            parts.append(_of_horizontal(rest, x, y, sources.moments[:, :2]))
+        if sources.moments[:, 2].any():
+            parts.append(_of_vertical(rest, x, y, sources.moments[:, 2]))
+        electric, magnetic = (sum(fields) for fields in zip(*parts, strict=True))
         factor = -1j * self.k * FREE_SPACE_IMPEDANCE / (4 * np.pi)
-        return factor * np.stack(electric, axis=1), np.stack(magnetic, axis=1) / (4 * np.pi)
+        return factor * electric, magnetic / (4 * np.pi)
+
+
+def _of_charges(rest, x, y, charge):
+    """grad K_phi summed over charges c/k^2, and no magnetic field; (n, 3) each."""
+    radial = rest["k_phi_rho"] * charge
+    electric = [_dot(radial, x), _dot(radial, y), rest["k_phi_zeta"] @ charge]
+    return np.stack(electric, axis=1), np.zeros((len(x), 3))
+
+
+def _of_horizontal(rest, x, y, moment):
+    """A of horizontal moments (m, 2): K_xx M_h and F' e . M upwards; and its curl."""
+    mx, my = moment.T
+    along = x * mx + y * my
+    across = x * my - y * mx
+    electric = [rest["k_xx"] @ mx, rest["k_xx"] @ my, _dot(rest["f_rho"], along)]
+    turn = (rest["laplacian_f"] - 2 * rest["f_rho_over_rho"]) * along
+    straight = rest["f_rho_over_rho"] - rest["k_xx_zeta"]
+    magnetic = [
+        _dot(turn, y) + straight @ my,
+        -_dot(turn, x) - straight @ mx,
+        _dot(rest["k_xx_rho"], across),
+    ]
+    return np.stack(electric, axis=1), np.stack(magnetic, axis=1)
+
+
+def _of_vertical(rest, x, y, moment):
+    """A of vertical moments (m,): K_zz M and -F' e M; its curl is that of the transverse-magnetic part."""
+    radial, turning = rest["f_rho"] * moment, rest["tm_rho"] * moment
+    electric = [-_dot(radial, x), -_dot(radial, y), rest["k_zz"] @ moment]
+    magnetic = [_dot(turning, y), -_dot(turning, x), np.zeros(len(x))]
+    return np.stack(electric, axis=1), np.stack(magnetic, axis=1)
+
+
+def _dot(first, second):
+    """(n,) sums over sources of products."""
+    return np.einsum("nm,nm->n", first, second)
 
 
 def half_space(ground, angular_frequency: float) -> HalfSpace | None:

@@ -90,7 +90,15 @@ def processor_time(*arguments) -> float:
 def assessment():
     imports = min(processor_time(sys.executable, "-c", IMPORTS) for _ in range(3))
     with tempfile.TemporaryDirectory() as folder:
-        command = (sys.executable, "-m", "exposure.command_line", "assess", "sites/garden-dipole.toml", "-o", folder)
+        command = (
+            sys.executable,
+            "-m",
+            "exposure.command_line",
+            "assess",
+            "sites/garden-dipole.toml",
+            "-o",
+            folder,
+        )
         whole = min(processor_time(*command) for _ in range(3))
     return imports, whole
 
@@ -106,7 +114,9 @@ def main():
         reference = factorisation(2000)
         for frequency in (1.9e6, 3.6e6, 14.2e6, 28.5e6):
             table = half_space_table(frequency)
-            print(f"half-space table at {frequency / 1e6:g} MHz / zsytrf(2000): {table / reference:.2f} ({table:.2f} s)")
+            print(
+                f"half-space table at {frequency / 1e6:g} MHz / zsytrf(2000): {table / reference:.2f} ({table:.2f} s)"
+            )
     imports, whole = assessment()
     print(f"garden dipole / imports: {whole / imports:.2f}   ({whole:.1f} s / {imports:.1f} s)")
 

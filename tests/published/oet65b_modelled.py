@@ -116,13 +116,14 @@ def comparison():
 
 
 def main():
-    print("| table | MHz | wire at m | power W | at m | tier | printed m | computed m | |")
-    print("|---|---|---|---|---|---|---|---|---|")
-    for row, tier, printed, found in comparison():
-        mark = "" if agrees(printed, found) else "differs"
+    print("| table | MHz | wire at m | at m | power W | printed con, unc m | computed con, unc m | |")
+    print("|---|---|---|---|---|---|---|---|")
+    cells = list(comparison())
+    for (row, _, con, our_con), (_, _, unc, our_unc) in zip(cells[::2], cells[1::2], strict=True):
+        mark = "" if agrees(con, our_con) and agrees(unc, our_unc) else "differs"
         print(
-            f"| {row.table} | {row.frequency / 1e6:g} | {row.height:g} | {row.power:g} | {row.level:g} | {tier} "
-            f"| {printed:g} | {found:.2f} | {mark} |"
+            f"| {row.table} | {row.frequency / 1e6:g} | {row.height:g} | {row.level:g} | {row.power:g} "
+            f"| {con:g}, {unc:g} | {our_con:.2f}, {our_unc:.2f} | {mark} |"
         )
 
 
