@@ -18,7 +18,9 @@ from exposure.outputs.drawing_paper import (
     shortened,
     wrapped,
 )
-from exposure.outputs.drawing_words import GENERAL_PUBLIC, POPULATIONS, digits
+from exposure.outputs.drawing_words import GENERAL_PUBLIC
+from exposure.outputs.formats import digits
+from exposure.outputs.words import POPULATIONS
 
 NAMES, VALUES = 66.0, 42.0  # mm beside the bars
 BARS = 36  # on one sheet
@@ -65,8 +67,8 @@ def _span(assessment: Assessment) -> tuple[int, int]:
 def _chart(assessment, groups, sheet: int, sheets: int, span) -> Drawing:
     title = "Exposure ratio of each area" + (f", sheet {sheet} of {sheets}" if sheets > 1 else "")
     state = (
-        f"{assessment.site.name}. All transmissions together, at the worst place of each area; proportional to "
-        "power, 1 at the limit. Thin mark: with its numerical error added."
+        f"{assessment.site.name}. All transmissions together, at the worst place of each area; proportional "
+        "to power, 1 at the limit. Thin mark: with its numerical error added."
     )
     above = title_height(title, state)
     paper = Paper(WIDTH, above + sum(g.height for g in groups) + GAP + AXIS)
@@ -94,8 +96,8 @@ def _chart(assessment, groups, sheet: int, sheets: int, span) -> Drawing:
         _group(paper, group, y, left, across)
         y -= group.height
     caption = (
-        "Exposure ratio of each area for each limit set and its population, all transmissions together, on a log axis "
-        "with the limit at 1; the thin mark is the value with its numerical error added. Not to scale."
+        "Exposure ratio of each area for each limit set and its population, all transmissions together, on a "
+        "log axis with the limit at 1; the thin mark is the value with its numerical error added. Not to scale."
     )
     name = "areas" if sheet == 1 else f"areas-{sheet}"
     return Drawing(name, title, caption, _alt(groups), WIDTH, paper.height, None, paper.figure)
@@ -160,7 +162,7 @@ def _alt(groups) -> str:
     parts = []
     for group in groups:
         values = [
-            f"{r.limits} {'not known' if r.exposure_ratio is None else digits(r.exposure_ratio)} ({r.verdict})"
+            f"{r.limits} {'not known' if r.exposure_ratio is None else digits(r.exposure_ratio)}, {r.verdict}"
             for r in group.area.results
         ]
         parts.append(f"Area {group.number}, {group.area.name}: {', '.join(values) or 'no limit covers it'}.")

@@ -4,12 +4,14 @@ import numpy as np
 import shapely
 
 from exposure.assessment.model import Assessment
-from exposure.outputs.drawing_map import Row, Window, line_symbol, number_symbol, zone_symbol
+from exposure.outputs.drawing_map import Row, Window, line_symbol, number_symbol
 from exposure.outputs.drawing_paper import AREA_FILL, DISC, GREY, INK, ZONE_FILL, ZONE_INK, Paper, shortened
-from exposure.outputs.drawing_words import GENERAL_PUBLIC, area_words, digits, power_words
+from exposure.outputs.drawing_words import GENERAL_PUBLIC, area_words, power_words
+from exposure.outputs.formats import digits
 
 PROPERTY = (0, (9, 2, 1.5, 2, 1.5, 2))
 TRACE = (0, (8, 2, 1.5, 2))
+HEIGHT_FILL = "#edf2f7"
 HEIGHT_STYLES = ((0, (1.2, 1.4)), (0, (7, 1.6, 1.4, 1.6)), (0, (12, 2.5)))
 ROLES = {  # width [points], style, colour, words
     "antenna": (2.2, "-", INK, "antenna"),
@@ -28,6 +30,11 @@ def zone_looks(population: str) -> dict:
         "width": 1.6,
         "style": (0, (4.5, 1.8)) if public else "-",
     }
+
+
+def height_looks(style) -> dict:
+    """Fill and line of the zone at another height."""
+    return {"fill": HEIGHT_FILL, "colour": ZONE_INK, "width": 1.4, "style": style}
 
 
 def draw_polygons(paper: Paper, window: Window, boundary, **looks):
@@ -129,7 +136,10 @@ def conductor_rows(assessment: Assessment, shown):
 def power_rows(assessment: Assessment, limits: str, population: str, most: int = 8):
     """Key rows of frequencies and powers."""
     texts = [power_words(assessment, limits, population, t) for t in assessment.transmissions]
-    rows = [Row(None, "Transmissions, all together", bold=True), *(Row(None, text) for text in texts[:most])]
+    rows = [
+        Row(None, "Transmissions, all together (of exclusive ones one at a time)", bold=True),
+        *(Row(None, text) for text in texts[:most]),
+    ]
     if len(texts) > most:
         rows.append(Row(None, f"and {len(texts) - most} more, see the table of transmissions"))
     return rows if texts else []
@@ -138,34 +148,15 @@ def power_rows(assessment: Assessment, limits: str, population: str, most: int =
 def area_rows(assessment: Assessment, limits: str, population: str, shown, most: int = 16):
     """Key rows of areas: number, name, heights, ratio and verdict."""
     rows = [
-        Row(number_symbol(number), f"{shortened(name, 62)}, {height} up; {words}")
+        Row(number_symbol(number), f"{shortened(name, 52)}, {height}: {words}")
         for number, (name, height, words) in enumerate(area_words(assessment, limits, population), 1)
         if number in shown
     ]
     if len(rows) > most:
         rows = [*rows[:most], Row(None, f"and {len(rows) - most} more, see the table of areas")]
-    return [Row(None, "Areas where people are", bold=True), *rows] if rows else []
+    return [Row(None, "Areas: height, exposure ratio, verdict", bold=True), *rows] if rows else []
 
 
 def nowhere(heights_) -> str:
     """Heights as words."""
     return ", ".join(digits(height) for height in heights_)
-
-
-__all__ = [
-    "HEIGHT_STYLES",
-    "PROPERTY",
-    "TRACE",
-    "area_rows",
-    "conductor_rows",
-    "draw_area",
-    "draw_conductors",
-    "draw_polygons",
-    "label_boundary",
-    "label_owners",
-    "nowhere",
-    "number_area",
-    "power_rows",
-    "zone_looks",
-    "zone_symbol",
-]

@@ -24,7 +24,10 @@ POINT = 25.4 / 72  # mm
 ROW = 3.9  # mm from base line to base line
 DISC = 2.1  # mm, radius of an area's number
 
-_FONTS = {bold: findfont(FontProperties(family=FAMILY, weight="bold" if bold else "normal")) for bold in (False, True)}
+_FONTS = {
+    False: findfont(FontProperties(family=FAMILY)),
+    True: findfont(FontProperties(family=FAMILY, weight="bold")),
+}
 _GLYPHS = frozenset(get_font(_FONTS[False]).get_charmap())
 
 

@@ -25,20 +25,24 @@ from exposure.outputs.drawing_map import (
     write_title,
     zone_symbol,
 )
-from exposure.outputs.drawing_paper import GREY, INK, ZONE_INK, Drawing, Paper
+from exposure.outputs.drawing_paper import GREY, INK, Drawing, Paper
 from exposure.outputs.drawing_words import (
     STANDING,
     area_sentence,
     area_words,
     averaging,
     clauses,
-    digits,
     doubts,
     extent_words,
     geometry,
     limit_words,
     power_words,
 )
+from exposure.outputs.formats import digits
+
+
+LOW = 2.0  # m: up to here the zone where people stand says it all
+APART = 0.5  # m: of heights nearer than this the larger zone is drawn
 
 
 @dataclass(frozen=True)
@@ -86,22 +90,29 @@ def plan(assessment: Assessment, limits: str, population: str, own: tuple[Bounda
 
 
 def _lines(assessment: Assessment, own) -> Lines:
-    """The largest zone above ground and those at the heights of people; three at most."""
+    """Above 2 m the largest zone and those at the heights of people; three at most."""
     flat = [b for b in own if b.section is None]
     standing = next((b for b in flat if b.height_m is None), None)
-    others = sorted((b for b in flat if b.height_m is not None), key=lambda b: b.height_m)
+    covered = LOW if standing else -1.0
+    others = sorted((b for b in flat if b.height_m is not None and b.height_m > covered), key=_height)
     reached = [b for b in others if b.polygons]
     by_size = sorted(reached, key=lambda b: -geometry(b).area)
-    peopled = [b for b in by_size[1:] if _someone(assessment, b.height_m)]
-    chosen = [*by_size[:1], *peopled, *(b for b in by_size[1:] if b not in peopled)][
-        : len(marks.HEIGHT_STYLES)
-    ]
+    wanted = [*by_size[:1], *sorted(by_size[1:], key=lambda b: not _someone(assessment, b.height_m))]
+    chosen = []
+    for boundary in wanted:
+        apart = all(abs(boundary.height_m - other.height_m) >= APART for other in chosen)
+        if apart and len(chosen) < len(marks.HEIGHT_STYLES):
+            chosen.append(boundary)
     return Lines(
         standing,
         tuple(b for b in reached if b in chosen),
         tuple(b.height_m for b in reached if b not in chosen),
         tuple(b.height_m for b in others if not b.polygons),
     )
+
+
+def _height(boundary: Boundary) -> float:
+    return boundary.height_m
 
 
 def _someone(assessment: Assessment, height: float) -> bool:
@@ -128,7 +139,7 @@ def _draw(paper, window, assessment, population, lines, traces):
         paper.line(window.mm((*corners, corners[0])), 1.1, marks.PROPERTY, layer=3.5)
     marks.draw_polygons(paper, window, lines.standing, **marks.zone_looks(population))
     for boundary, style in zip(lines.drawn, marks.HEIGHT_STYLES, strict=False):
-        marks.draw_polygons(paper, window, boundary, colour=ZONE_INK, width=1.4, style=style, layer=3)
+        marks.draw_polygons(paper, window, boundary, **marks.height_looks(style), layer=1.5)
     chains = [(c.role, window.mm([p[:2] for p in c.points_m])) for c in assessment.conductors]
     marks.draw_conductors(paper, chains)
     for trace in traces:
@@ -185,14 +196,12 @@ def _key(assessment, limits, population, lines, traces):
         rows.append(Row(None, f"The boundary at {STANDING} is not known.", bold=True))
     elif lines.standing.polygons:
         symbol = zone_symbol(**marks.zone_looks(population))
-        rows.append(Row(symbol, f"limit reached or exceeded at {STANDING}, where people stand"))
+        rows.append(Row(symbol, f"limit reached or exceeded at 0–2 m up, where people stand"))
     else:
         rows.append(Row(None, f"Limit reached nowhere at {STANDING}, where people stand.", bold=True))
     for boundary, style in zip(lines.drawn, marks.HEIGHT_STYLES, strict=False):
-        where = f"{digits(boundary.height_m)} m above ground"
-        rows.append(
-            Row(line_symbol(1.4, style, ZONE_INK), f"limit at {where}: reached or exceeded inside the line")
-        )
+        where = f"at {digits(boundary.height_m)} m up"
+        rows.append(Row(zone_symbol(**marks.height_looks(style)), f"limit reached or exceeded {where}"))
     if lines.nowhere:
         rows.append(Row(None, f"Limit reached nowhere at {marks.nowhere(lines.nowhere)} m above ground."))
     if lines.crowded:
@@ -212,8 +221,8 @@ def _caption(assessment, limits, population, lines, scale) -> str:
     levels = [STANDING, *(f"{digits(b.height_m)} m" for b in lines.drawn)]
     powers = "; ".join(power_words(assessment, limits, population, t) for t in assessment.transmissions)
     return (
-        f"Plan of the site with the line where the exposure ratio of all transmissions together is 1, in horizontal "
-        f"planes at {', '.join(levels)}; the numerical error is not added to the line. "
+        f"Plan of the site with the line where the exposure ratio of all transmissions together is 1, in "
+        f"horizontal planes at {', '.join(levels)}; the numerical error is not added to the line. "
         f"Limit: {limit_words(assessment, limits, population)}, {clauses(assessment, limits, population)}; "
         f"averaging time {averaging(assessment, limits, population)}. "
         f"Transmissions: {powers or 'none'}. Scale 1:{scale}. North is up."

@@ -30,12 +30,12 @@ from exposure.outputs.drawing_words import (
     area_words,
     averaging,
     clauses,
-    digits,
     doubts,
     geometry,
     limit_words,
     power_words,
 )
+from exposure.outputs.formats import digits
 
 BEHIND = 5.0  # m from the plane: areas nearer than this are dashed, conductors are drawn
 GROUND = 6.0  # mm of ground below the line
@@ -217,9 +217,9 @@ def _caption(assessment, boundary, letter, right, scale) -> str:
     limits, population = boundary.limits, boundary.population
     powers = "; ".join(power_words(assessment, limits, population, t) for t in assessment.transmissions)
     return (
-        f"Vertical section {letter}–{letter}′ ({boundary.section}), seen with {right} to the right, with the line "
-        f"where the exposure ratio of all transmissions together is 1; its trace is marked in the plan. Conductors "
-        f"within {BEHIND:g} m are projected onto the plane; the numerical error is not added to the line. "
+        f"Vertical section {letter}–{letter}′ ({boundary.section}), seen with {right} to the right, with the "
+        f"line where the exposure ratio of all transmissions together is 1; its trace is marked in the plan. "
+        f"Conductors within {BEHIND:g} m are projected onto the plane; the numerical error is not added to the line. "
         f"Limit: {limit_words(assessment, limits, population)}, {clauses(assessment, limits, population)}; "
         f"averaging time {averaging(assessment, limits, population)}. Transmissions: {powers or 'none'}. "
         f"Scale 1:{scale}, heights and lengths alike."

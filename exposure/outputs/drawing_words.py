@@ -5,30 +5,11 @@ from math import atan2, degrees, hypot
 import shapely
 
 from exposure.assessment.model import Assessment, Boundary, TransmissionFinding
+from exposure.outputs.formats import digits, heights, minutes
+from exposure.outputs.words import POPULATIONS
 
-POPULATIONS = {"general_public": "general public", "occupational": "occupational"}
 GENERAL_PUBLIC = "general_public"
 STANDING = "0–2 m above ground"
-
-
-def digits(value: float, count: int = 3) -> str:
-    """Significant digits, without an exponent where that is readable."""
-    if value == 0 or 1e-4 <= abs(value) < 1e6:
-        text = f"{float(f'{value:.{count}g}'):.6f}"
-        return text.rstrip("0").rstrip(".")
-    return f"{value:.{count - 1}e}"
-
-
-def duration(time: float) -> str:
-    """An averaging time [s]; zero is the instantaneous peak."""
-    if time == 0:
-        return "instantaneous"
-    return f"{digits(time / 60)} min" if time >= 60 else f"{digits(time)} s"
-
-
-def heights(bottom: float, top: float) -> str:
-    """The heights of an area. [m]"""
-    return f"{digits(bottom)} m" if bottom == top else f"{digits(bottom)}–{digits(top)} m"
 
 
 def limit_words(assessment: Assessment, limits: str, population: str) -> str:
@@ -51,14 +32,14 @@ def clauses(assessment: Assessment, limits: str, population: str) -> str:
 def averaging(assessment: Assessment, limits: str, population: str) -> str:
     """The averaging times of the levels."""
     times = sorted({x.averaging_time_s for x in levels_of(assessment, limits, population)})
-    return " and ".join(duration(time) for time in times) or "not known"
+    return " and ".join(minutes(time) for time in times) or "not known"
 
 
 def power_words(assessment: Assessment, limits: str, population: str, found: TransmissionFinding) -> str:
     """Frequency and powers of a transmission, at the averaging times of the limit."""
     times = {x.averaging_time_s for x in levels_of(assessment, limits, population)}
     means = [
-        f"{digits(x.power_w)} W mean over {duration(x.averaging_time_s)}"
+        f"{digits(x.power_w)} W mean over {minutes(x.averaging_time_s)}"
         for x in found.average_powers
         if x.averaging_time_s in times and x.averaging_time_s > 0
     ]
@@ -69,7 +50,7 @@ def power_words(assessment: Assessment, limits: str, population: str, found: Tra
         *means,
     ]
     if found.exclusive:
-        parts.append("never together with others of its group")
+        parts.append("exclusive")
     return f"{found.name}: " + ", ".join(parts)
 
 
@@ -103,8 +84,9 @@ def extent_words(zone, middle, where: str) -> str:
     far, bearing = farthest(zone, middle)
     west, south, east, north = zone.bounds
     return (
-        f"At {where} the zone covers {digits(zone.area)} m²; largest extent {far:.1f} m towards {bearing:.0f} degrees "
-        f"from the middle of the antennas; east {west:.1f} to {east:.1f} m, north {south:.1f} to {north:.1f} m."
+        f"At {where} the zone covers {digits(zone.area)} m²; largest extent {far:.1f} m "
+        f"towards {bearing:.0f} degrees from the middle of the antennas; east {west:.1f} to {east:.1f} m, "
+        f"north {south:.1f} to {north:.1f} m."
     )
 
 
@@ -125,15 +107,16 @@ def area_words(assessment: Assessment, limits: str, population: str) -> list[tup
         elif result is None:
             words = "not covered by this limit set: cannot be decided"
         elif result.exposure_ratio is None:
-            words = f"exposure ratio not known: {result.verdict}"
+            words = f"exposure ratio not known, {result.verdict}"
         else:
-            words = f"exposure ratio {digits(result.exposure_ratio)}: {result.verdict}"
+            words = f"{digits(result.exposure_ratio)}, {result.verdict}"
         rows.append((area.name, heights(area.bottom_m, area.top_m), words))
     return rows
 
 
 def area_sentence(rows) -> str:
     """The rows of areas as text."""
-    return " ".join(
+    start = "Exposure ratio and verdict: " if rows else ""
+    return start + " ".join(
         f"Area {n}, {name}, {height}: {words}." for n, (name, height, words) in enumerate(rows, 1)
     )

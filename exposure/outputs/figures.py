@@ -23,6 +23,7 @@ SETTINGS = {
     "svg.hashsalt": "exposure",  # the same names in every run
     "pdf.fonttype": 42,  # TrueType
     "path.simplify": False,
+    "text.hinting": "no_hinting",  # widths on the screen are those on paper
 }
 DOTS_PER_INCH = 150
 
