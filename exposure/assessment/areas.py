@@ -1,10 +1,11 @@
 """The greatest exposure ratio in an area, and the place where it is.
 
 Branch and bound on adaptive boxes: a box is halved while the interpolated field, enlarged by its
-error, could exceed the greatest ratio known from true fields by more than `TOLERANCE`, for any of
-the ratio functions.  All share the same points.  Because the nodes of a box include its faces,
-edges and corners, and the outline of the area is sampled where it is no rectangle, a maximum at the
-rim (the usual place) is found as well as one inside.
+error, could exceed the greatest ratio known from true fields by more than `TOLERANCE` (of a ratio
+far below one by `QUIET_TOLERANCE`), for any of the ratio functions.  All share the same points.
+Because the nodes of a box include its faces, edges and corners, and the outline of the area is
+sampled where it is no rectangle, a maximum at the rim (the usual place) is found as well as one
+inside.
 """
 
 from dataclasses import dataclass
@@ -17,6 +18,8 @@ from exposure.assessment.prisms import Prism, frame
 from exposure.assessment.strengths import FieldStrengths, remembered
 
 TOLERANCE = 0.005  # of the exposure ratio
+QUIET = 0.1  # below that ratio `upper` may be farther off, by
+QUIET_TOLERANCE = 0.02
 ORDER = 5  # nodes a side: 125 in a box
 CANDIDATES = 9  # places a side where the interpolated field is looked at
 OUTLINE_STEPS = 256
@@ -187,7 +190,8 @@ class _Search:
 
     def _across(self, panels, bounds):
         """Direction to halve each box across, -1 where nothing greater can hide in it."""
-        promising = (bounds > self.best_ratio * (1 + TOLERANCE)).any(axis=1)
+        tolerance = np.where(self.best_ratio < QUIET, QUIET_TOLERANCE, TOLERANCE)
+        promising = (bounds > self.best_ratio * (1 + tolerance)).any(axis=1)
         sides = panels.sides
         longest = np.argmax(sides, axis=1)
         worst = np.argmax(np.where(sides > 0, panels.tails.max(axis=2), -1.0), axis=1)

@@ -28,7 +28,11 @@ STEP = 0.25  # of the distance from shell to shell
 OVERSHOOT = 1.3  # a lobe may be that much higher than its highest sample
 LEAST_SEED = 0.5  # ratio; a power of distance is not trusted further than that
 BOXES = (0.30, 0.10, 0.03, 0.01)  # half sides of the boxes around the best places, of the distance
-PRECISE = (0.10, 0.03, 0.006)  # of the distance, by each size but the last: places nearer in by more drop out
+PRECISE = (
+    0.10,
+    0.02,
+    0.005,
+)  # of the distance, of the boxes before: places nearer in by more stay as they are
 BESIDE = 0.5  # m: at other metal, boxes as if the conductors were that far
 BALLS = np.array([0.03, 0.06, 0.12, 0.24, 0.48])  # m, radii of places looked at there
 SEEDS = 4
@@ -228,14 +232,13 @@ class _Search:
 
     def _located(self, found):
         """Distances from lobes; all take their steps together."""
-        which = [i for i, f in enumerate(found) if isinstance(f, _Lobes) for _ in f.seeds]
-        seeds = [seed for f in found if isinstance(f, _Lobes) for seed in f.seeds]
-        lobes = (
-            np.array(which, int),
-            np.array([p for p, _ in seeds]).reshape(-1, 3),
-            np.array([d for _, d in seeds]),
-        )
-        for size, precise in zip(BOXES, (*PRECISE, 0.0), strict=True):
+        seeds = [(i, *seed) for i, f in enumerate(found) if isinstance(f, _Lobes) for seed in f.seeds]
+        which = np.array([i for i, *_ in seeds], int)
+        starts, away = np.array([p for _, p, _ in seeds]).reshape(-1, 3), np.array([d for *_, d in seeds])
+        places, distances = self.climbs.farthest(which, starts, BOXES[0] * away)
+        seen = distances > 0
+        lobes = which[seen], places[seen], distances[seen]
+        for size, precise in zip(BOXES[1:], PRECISE, strict=True):
             lobes = self._nearer(*lobes, size, precise)
         which, places, distances = lobes
         _, _, ratios = self._measured(places)
@@ -250,20 +253,17 @@ class _Search:
         return result
 
     def _nearer(self, which, places, distances, size, precise):
-        """Places after boxes of one size; those of a ratio function that are surely nearer in drop out.
+        """Places after boxes of one size, around those that may be the farthest of their ratio function.
 
         A small box beside the line may not see it: then the place from the larger box stands.
         """
-        climbed, reached = self.climbs.farthest(which, places, size * distances)
-        seen = reached > 0
-        if size == BOXES[0]:
-            which, places, distances = which[seen], climbed[seen], reached[seen]
-        else:
-            places, distances = np.where(seen[:, None], climbed, places), np.where(seen, reached, distances)
         best = np.zeros(len(self.ratios))
         np.maximum.at(best, which, distances)
-        keep = distances >= (1 - precise) * best[which] if precise else np.ones(len(which), bool)
-        return which[keep], places[keep], distances[keep]
+        active = np.flatnonzero(distances >= (1 - precise) * best[which])
+        climbed, reached = self.climbs.farthest(which[active], places[active], size * distances[active])
+        seen = reached > 0
+        places[active[seen]], distances[active[seen]] = climbed[seen], reached[seen]
+        return which, places, distances
 
     def _contact(self, point, distance, seen):
         """The ratio reaches one only within three radii: the next shell outside is an upper bound."""

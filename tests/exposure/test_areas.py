@@ -4,7 +4,14 @@ import numpy as np
 import pytest
 import shapely
 
-from exposure.assessment.areas import OUTLINE_STEPS, TOLERANCE, greatest, greatest_body_average
+from exposure.assessment.areas import (
+    OUTLINE_STEPS,
+    QUIET,
+    QUIET_TOLERANCE,
+    TOLERANCE,
+    greatest,
+    greatest_body_average,
+)
 from exposure.assessment.prisms import Prism, frame, prism
 from exposure.site.model import Area
 from tests.exposure.positions import GARDEN_WIRE, first_over, garden, heating, sphere, strengths
@@ -16,9 +23,10 @@ def rectangle(west, south, east, north, bottom, top):
     return Prism(shapely.box(west, south, east, north), bottom, top)
 
 
-def dense(function, space, step=0.1):
-    """True fields at every `step` of the prism and along its outline."""
+def dense(function, space):
+    """True fields in a prism and along its outline, every 0.1 m or 1/150 of its width if that is more."""
     west, south, east, north = space.outline.bounds
+    step = max(0.1, (east - west) / 150)
     axes = [np.arange(a, b + step, step) for a, b in ((west, east), (south, north))]
     plan = np.stack(np.meshgrid(*axes, indexing="ij"), axis=-1).reshape(-1, 2)
     rim = np.array(shapely.segmentize(space.outline.exterior, 0.5 * step).coords)[:, :2]
@@ -99,7 +107,7 @@ AREAS = {
 
 @pytest.mark.parametrize("name", AREAS)
 def test_areas_near_a_dipole_over_ground(name):
-    """All ratio functions in one search, against true fields every 0.1 m.
+    """All ratio functions in one search, against true fields every 0.1 to 0.4 m.
 
     Tolerance: that of the search; the budget is the count measured when this was written, with a
     quarter to spare.
@@ -112,9 +120,10 @@ def test_areas_near_a_dipole_over_ground(name):
     values = dense(garden(current=2.0), space)
     for extreme, ratio in zip(found, LIMITS, strict=True):
         true = ratio(values).max()
-        assert extreme.ratio >= true * (1 - TOLERANCE)
+        tolerance = QUIET_TOLERANCE if true < QUIET else TOLERANCE
+        assert extreme.ratio >= true * (1 - tolerance)
         assert extreme.upper >= true * (1 - 1e-3)  # the outline is sampled 1/256 of its length apart
-        assert extreme.upper <= extreme.ratio * (1 + 2 * TOLERANCE)
+        assert extreme.upper <= extreme.ratio * (1 + 2 * tolerance)
         assert ratio(extreme.values[None])[0] == pytest.approx(extreme.ratio, rel=1e-12)
         assert space.contains([extreme.position])[0]
     assert field.values.points < budget
