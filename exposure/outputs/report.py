@@ -86,6 +86,7 @@ def _sections(assessment: Assessment, drawn, paper: Paper):
         ("Cautions", bullets(words.CAUTIONS)),
         ("Local rules and licensed practice", bullets(words.DEFERENCE)),
         ("Access", bullets(words.ACCESS)),
+        ("Figures in words", report_parts.figures_in_words(drawn)),
         ("Validity and signature", report_parts.signature(assessment, width)),
         ("Input", report_parts.inputs(assessment)),
     )

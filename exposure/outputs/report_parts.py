@@ -16,6 +16,7 @@ from exposure.outputs.report_style import (
     MONO,
     NOTE,
     PART,
+    TEXT,
     bullets,
     drawable,
     marked,
@@ -24,7 +25,8 @@ from exposure.outputs.report_style import (
 from exposure.outputs.report_tables import paper_table
 from exposure.outputs.vector_figures import VectorFigure
 
-CAPTION_ROOM = 150  # points kept below a figure for its words
+HEADING_ROOM = 40  # points of a section heading above the first figure
+LEAST_CAPTION = 60  # points kept below a figure for the beginning of its words
 ROOM_FOR_A_PART = 70  # points that must be left on a page to begin one
 NOT_REDUCED = 0.999  # a part in a thousand is less than what paper shrinks
 SHORT = 260  # points: what is not longer stays on one page
@@ -49,21 +51,36 @@ class Picture:
 
 
 def figure_parts(pictures, room: tuple[float, float]) -> list:
-    """Each picture at its scale with its words, kept together; room: width, height [points]."""
+    """Each picture at its scale, its words kept with it where they fit; room: width, height [points]."""
     if not pictures:
         return [paragraph("There are no figures: nothing was found to draw.")]
-    parts = []
-    for number, picture in enumerate(pictures, 1):
-        figure = VectorFigure(
-            f"figure{number}", picture.pdf, picture.width_mm, picture.height_mm, picture.alt
-        )
-        figure = figure.reduced_to(room[0], room[1] - CAPTION_ROOM)
-        captions = [
-            Paragraph(f"<b>Figure {number}.</b> {marked(_caption(picture, figure.reduction))}", CAPTION),
-            *([paragraph(f"In words: {picture.alt}", NOTE)] if picture.alt else []),
-        ]
-        parts.append(KeepTogether([figure, *captions, Spacer(1, 8)]))
-    return parts
+    return [
+        part
+        for number, picture in enumerate(pictures, 1)
+        for part in _figure(picture, number, room[0], room[1] - (HEADING_ROOM if number == 1 else 0))
+    ]
+
+
+def _figure(picture: Picture, number: int, width: float, height: float) -> list:
+    figure = VectorFigure(f"figure{number}", picture.pdf, picture.width_mm, picture.height_mm, picture.alt)
+    figure = figure.reduced_to(width, height - LEAST_CAPTION)
+    told = [
+        Paragraph(f"<b>Figure {number}.</b> {marked(_caption(picture, figure.reduction))}", CAPTION),
+        Spacer(1, 8),
+    ]
+    tall = figure.height + sum(part.wrap(width, height)[1] + part.getSpaceBefore() for part in told)
+    if tall <= height - LEAST_CAPTION / 2:
+        return [KeepTogether([figure, *told])]
+    return [KeepTogether([figure, told[0]]), *told[1:]]
+
+
+def figures_in_words(pictures) -> list:
+    """What each figure shows, for readers who do not see it."""
+    return [
+        Paragraph(f"<b>Figure {number}, {marked(picture.title)}.</b> {marked(picture.alt)}", TEXT)
+        for number, picture in enumerate(pictures, 1)
+        if picture.alt
+    ]
 
 
 def _caption(picture: Picture, reduction: float) -> str:

@@ -10,7 +10,7 @@ from reportlab.lib.pagesizes import A4, LETTER
 from reportlab.lib.styles import ParagraphStyle
 from reportlab.pdfbase import pdfmetrics
 from reportlab.pdfbase.ttfonts import TTFont
-from reportlab.platypus import ListFlowable, Paragraph
+from reportlab.platypus import Paragraph
 
 BODY, BOLD, MONO = "ExposureSans", "ExposureSans-Bold", "ExposureMono"
 FILES = {BODY: "DejaVuSans.ttf", BOLD: "DejaVuSans-Bold.ttf", MONO: "DejaVuSansMono.ttf"}
@@ -42,7 +42,7 @@ TEXT = _style("text", 8.5, spaceAfter=4)
 NOTE = _style("note", 7.5, spaceAfter=4, textColor=GREY)
 SECTION = _style("section", 11.5, BOLD, spaceBefore=11, spaceAfter=4)
 PART = _style("part", 8.5, BOLD, spaceBefore=6, spaceAfter=3)
-CAPTION = _style("caption", 8.5, spaceBefore=3, spaceAfter=3)
+CAPTION = _style("caption", 7.5, spaceBefore=3, spaceAfter=3)
 VERDICT = _style("verdict", 17, BOLD, spaceAfter=5)
 CELL = _style("cell", 7)
 HEADING_CELL = _style("heading cell", 7, BOLD)
@@ -70,10 +70,7 @@ def paragraph(text: str, style: ParagraphStyle = TEXT) -> Paragraph:
     return Paragraph(marked(text), style)
 
 
-def bullets(texts, style: ParagraphStyle = TEXT) -> list:
-    """A list; nothing where there are no texts."""
-    if not texts:
-        return []
-    items = [paragraph(text, style) for text in texts]
-    look = {"bulletFontName": BODY, "bulletFontSize": style.fontSize, "leftIndent": 11, "bulletDedent": 9}
-    return [ListFlowable(items, bulletType="bullet", start="–", **look)]
+def bullets(texts, style: ParagraphStyle = TEXT) -> list[Paragraph]:
+    """A list, each item a paragraph of its own; nothing where there are no texts."""
+    hanging = ParagraphStyle("item", style, leftIndent=11, bulletIndent=2, bulletFontSize=style.fontSize)
+    return [Paragraph(marked(text), hanging, bulletText="–") for text in texts]

@@ -24,6 +24,7 @@ DECISIONS = {
     "best_estimate": "the best estimate of the exposure ratio must stay below 1, numerical error not added",
     "margin": "the best estimate of the exposure ratio must stay below {margin}",
 }
+MOST_REASONS = 10
 SPATIAL = {
     "peak": "the greatest value in an area decides, also where a document allows an average over the body",
     "body_average": "where a document allows it, the average over a standing body decides",
@@ -55,7 +56,7 @@ def verdict_frame(assessment: Assessment, width: float, warnings_at: str) -> lis
     inside = [
         Heading(marked(f"Verdict: {assessment.verdict.upper()}"), VERDICT, 0, "verdict"),
         paragraph(words.VERDICTS[assessment.verdict]),
-        *_list("Why", assessment.reasons),
+        *_list("Why", shortened(assessment.reasons)),
         *_list("Conditions: they are part of the verdict", assessment.conditions),
         *_list("Worst place", worst_places(assessment)),
         *_list("How it is decided", (_decision(site), SPATIAL[site.spatial])),
@@ -77,12 +78,18 @@ def verdict_frame(assessment: Assessment, width: float, warnings_at: str) -> lis
     ]
     if assessment.verdict != "within limits":
         look.append(("BACKGROUND", (0, 0), (-1, 0), PALE))
-    narrow = [("TOPPADDING", (0, 1), (-1, -1), 0), ("BOTTOMPADDING", (0, 0), (-1, -2), 0)]
+    narrow = [("TOPPADDING", (0, 1), (-1, -1), 0), ("BOTTOMPADDING", (0, 0), (-1, -2), 2)]
     headings = [row for row, flowable in enumerate(inside) if getattr(flowable, "style", None) is PART]
     narrow += [("TOPPADDING", (0, row), (0, row), 6) for row in headings]
     narrow += [("BOTTOMPADDING", (0, 0), (0, 0), 9), ("TOPPADDING", (0, 1), (0, 1), 5)]
     rows = [[flowable] for flowable in inside]
     return [Table(rows, colWidths=[width], style=TableStyle(narrow + look), spaceBefore=8, spaceAfter=6)]
+
+
+def shortened(reasons) -> tuple[str, ...]:
+    """The first reasons; the areas' own stand with the table of areas too."""
+    more = len(reasons) - MOST_REASONS
+    return (*reasons[:MOST_REASONS], *([f"and {more} more, see the section on areas"] if more > 0 else ()))
 
 
 def worst_places(assessment: Assessment) -> tuple[str, ...]:
