@@ -38,9 +38,14 @@ def rule(limits_id: str, population: str, emissions, unsolved=()) -> Rule:
     return of_levels(limits_id, population, emissions, levels, document(limits_id).SUMMATION, tuple(missing))
 
 
+def brief_local_above(limits_id: str) -> float:
+    """Frequency above which a document also limits brief local exposure; infinite where it never does. [Hz]"""
+    return getattr(document(limits_id), "BRIEF_LOCAL_ABOVE", float("inf"))
+
+
 def _judged_levels(limits_id: str, population: str, frequency: float) -> tuple[Level, ...]:
     """The levels as they are compared: a local one without time average where brief exposures are limited."""
-    brief = frequency > document(limits_id).BRIEF_LOCAL_ABOVE
+    brief = frequency > brief_local_above(limits_id)
     return tuple(
         replace(level, averaging_time_s=0.0) if brief and level.scope == "local" else level
         for level in reference_levels(limits_id, population, frequency)

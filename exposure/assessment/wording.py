@@ -1,7 +1,7 @@
 """What an assessment says in words: reasons, conditions, choices, cautions, and what it leaves open."""
 
 from exposure.assessment.model import Conductor, LevelInfo, LimitInfo, SiteInfo
-from exposure.assessment.rules import populations
+from exposure.assessment.rules import brief_local_above, populations
 from exposure.assessment.scene import GENERAL_PUBLIC, Scene
 from exposure.assessment.uncertainty import REMAINING
 from exposure.assessment.verdict import EXCEEDS, UNDECIDED, WITHIN, DecisionRule
@@ -173,7 +173,7 @@ def choices(site: Site, decision: DecisionRule, factor: float, scene: Scene, rul
         "assessed",
         "where only a power density is given, the larger of E^2/377 ohm and 377 ohm H^2 is compared with it",
     ]
-    brief_above = min(document(limits).BRIEF_LOCAL_ABOVE for limits in site.limits)
+    brief_above = min(brief_local_above(limits) for limits in site.limits)
     if any(transmission.frequency > brief_above for transmission in site.transmissions):
         found.append(
             "above 400 MHz the local level is compared with peak envelope power, without time averaging: an "
