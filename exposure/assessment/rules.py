@@ -39,7 +39,7 @@ def rule(limits_id: str, population: str, emissions, unsolved=()) -> Rule:
 
 
 def brief_local_above(limits_id: str) -> float:
-    """Frequency above which a document also limits brief local exposure; infinite where it never does. [Hz]"""
+    """Frequency above which a document also limits brief local exposure; infinite if never. [Hz]"""
     return getattr(document(limits_id), "BRIEF_LOCAL_ABOVE", float("inf"))
 
 

@@ -17,6 +17,10 @@ from exposure.site.site_file import read_site
 from exposure.verbs.screen import figures, print_json, print_table, progress
 
 EXIT_CODES = {"within limits": 0, "exceeds limits": 1, "cannot be decided": 3}
+CAUTION = (
+    "a calculation is no permission: local rules, the authority's current text and licensed or qualified persons "
+    "come first; never work near an antenna that can transmit"
+)
 FILES = ("assessment.json", "boundaries.geojson", "report.pdf", "figures")
 
 
@@ -91,6 +95,7 @@ def _print(assessment, directory: Path):
         print(f"caution: {caution}")
     for thing in assessment.not_assessed:
         print(f"not assessed: {thing}")
+    print(f"caution: {CAUTION}")
     print(f"written: {directory}/ ({', '.join(name for name in FILES if (directory / name).exists())})")
 
 
