@@ -4,7 +4,7 @@ from dataclasses import dataclass
 from math import ceil, floor, log10
 
 from exposure.assessment.model import Assessment
-from exposure.outputs.drawing_map import WIDTH, title_height, write_title
+from exposure.outputs.drawing_map import TALLEST, WIDTH, title_height, write_title
 from exposure.outputs.drawing_paper import (
     DISC,
     GREY,
@@ -23,8 +23,8 @@ from exposure.outputs.formats import digits
 from exposure.outputs.words import POPULATIONS
 
 NAMES, VALUES = 66.0, 42.0  # mm beside the bars
-BARS = 36  # on one sheet
 PITCH, GAP = 4.6, 2.2  # mm from bar to bar, and between areas
+HEADING = 18.0  # mm, at least that of the title
 AXIS = 20.0  # mm below the bars
 LOWEST, HIGHEST = 1e-8, 1e8
 
@@ -44,14 +44,11 @@ class Group:
 
 def charts(assessment: Assessment) -> tuple[Drawing, ...]:
     """One bar chart of areas, or several where there are many; none without areas."""
-    sheets, count = [], 0
-    for number, area in enumerate(assessment.areas, 1):
-        bars = max(1, len(area.results))
-        if not sheets or count + bars > BARS:
+    sheets, room = [], TALLEST - HEADING - AXIS - GAP
+    for group in (Group(number, area) for number, area in enumerate(assessment.areas, 1)):
+        if not sheets or sum(g.height for g in sheets[-1]) + group.height > room:
             sheets.append([])
-            count = 0
-        sheets[-1].append(Group(number, area))
-        count += bars
+        sheets[-1].append(group)
     span = _span(assessment)
     return tuple(_chart(assessment, groups, n, len(sheets), span) for n, groups in enumerate(sheets, 1))
 

@@ -11,7 +11,7 @@ WIDTH = 170.0  # mm: between the margins of A4 and Letter
 TALLEST = 218.0  # mm: leaves room for heading and caption on both
 MAP_HEIGHT = 150.0  # mm, axes included
 LEFT, BELOW, RIGHT = 12.0, 9.0, 1.0  # mm beside and below the window, for its axes
-MARGIN = 6.0  # mm inside the window, for labels
+MARGIN = 5.0  # mm inside the window, for labels
 BAR = 9.0  # mm below the axes, for the scale bar
 SYMBOL = 13.0  # mm before a row of the key
 SCALES = (50, 100, 200, 250, 500, *(m * 10**n for n in range(3, 8) for m in (1, 2, 2.5, 5)))
@@ -166,6 +166,12 @@ class Key:
                 for n, line in enumerate(row.lines(width)):
                     paper.write(left + row.indent, y - ROW * (n + 1) + 0.9, line, SIZE, row.bold)
                 y -= row.height(width)
+
+
+def fitting_key(build, room: float) -> Key:
+    """The longest key that fits a height [mm]; build is a function of the most areas and transmissions."""
+    keys = (build(areas, powers) for areas, powers in ((16, 8), (12, 6), (9, 4), (6, 3), (3, 2), (1, 1)))
+    return next((key for key in keys if key.height <= room), build(0, 0))
 
 
 def _height(rows, width: float) -> float:

@@ -58,7 +58,9 @@ def number_area(paper: Paper, window: Window, number: int, ring):
     size = 2 * DISC + 0.6
     if len(ring) > 2:
         shape = shapely.Polygon(ring).buffer(0)
-        spot = paper.place(_inside(shape, size / 2), size, size, window.frame)
+        spots = _inside(shape, size / 2)
+        away = np.hypot(*(spots - spots[:1]).T) if len(spots) else []
+        spot = paper.place(spots, size, size, window.frame, 0.3 * np.asarray(away))
         if spot:
             paper.disc(*spot, number)
             return
@@ -68,8 +70,9 @@ def number_area(paper: Paper, window: Window, number: int, ring):
         start = np.mean(ring, axis=0)
     turns = np.arange(16) * np.pi / 8
     around = np.column_stack([np.cos(turns), np.sin(turns)])
-    spots = np.vstack([start + around * gap for gap in (4, 7, 11, 16, 24, 35, 50)])
-    spot = paper.place(spots, size, size, window.frame)
+    gaps = np.array([4, 7, 11, 16, 24, 35, 50])
+    spots = np.vstack([start + around * gap for gap in gaps])
+    spot = paper.place(spots, size, size, window.frame, np.repeat(gaps, len(around)))
     if spot is None:
         return
     way = np.subtract(spot, start)
@@ -136,8 +139,10 @@ def conductor_rows(assessment: Assessment, shown):
 def power_rows(assessment: Assessment, limits: str, population: str, most: int = 8):
     """Key rows of frequencies and powers."""
     texts = [power_words(assessment, limits, population, t) for t in assessment.transmissions]
+    exclusive = any(t.exclusive for t in assessment.transmissions)
+    alternating = "; of exclusive ones one at a time" if exclusive else ""
     rows = [
-        Row(None, "Transmissions, all together (of exclusive ones one at a time)", bold=True),
+        Row(None, "Transmissions, all together" + alternating, bold=True),
         *(Row(None, text) for text in texts[:most]),
     ]
     if len(texts) > most:

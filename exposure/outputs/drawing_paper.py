@@ -29,6 +29,7 @@ _FONTS = {
     True: findfont(FontProperties(family=FAMILY, weight="bold")),
 }
 _GLYPHS = frozenset(get_font(_FONTS[False]).get_charmap())
+_PLAIN = str.maketrans({"–": "-", "−": "-", "′": "'", "…": "..."})
 
 
 @dataclass(frozen=True)
@@ -50,8 +51,12 @@ class Drawing:
 
 
 def drawable(text: str) -> str:
-    """The text with a box for every character that the font does not have."""
-    return "".join(c if ord(c) in _GLYPHS and c.isprintable() else "□" for c in " ".join(text.split()))
+    """The text with a box for every character that the font does not have.
+
+    Own dashes become hyphens: a PDF embeds the font once more for characters beyond the first 256.
+    """
+    plain = " ".join(text.split()).translate(_PLAIN)
+    return "".join(c if ord(c) in _GLYPHS and c.isprintable() else "□" for c in plain)
 
 
 def text_width(text: str, size: float = SIZE, bold: bool = False) -> float:
@@ -72,9 +77,9 @@ def shortened(text: str, width: float, size: float = SIZE, bold: bool = False) -
     text = drawable(text)
     if text_width(text, size, bold) <= width:
         return text
-    while text and text_width(text + "…", size, bold) > width:
+    while text and text_width(text + "...", size, bold) > width:
         text = text[:-1].rstrip()
-    return text + "…"
+    return text + "..."
 
 
 def wrapped(text: str, width: float, size: float = SIZE, bold: bool = False) -> list[str]:
@@ -172,23 +177,23 @@ class Paper:
         """No label goes there."""
         self.taken.append((left, bottom, right, top))
 
-    def place(self, spots, width, height, frame):
-        """The centre where a box of that size covers nothing, the first spots preferred; None if nowhere.
+    def place(self, spots, width, height, frame, costs):
+        """The centre where a box of that size covers nothing and costs least; None if nowhere.
 
-        spots : (n, 2) mm; frame : (left, bottom, right, top) to stay in.
+        spots : (n, 2) mm; costs : (n,), to which the ink that is covered is added; frame : (left, bottom, right, top) to stay in.
         """
         spots = np.asarray(spots, float).reshape(-1, 2)
         low, high = spots - (width / 2, height / 2), spots + (width / 2, height / 2)
         free = (low >= frame[:2]).all(1) & (high <= frame[2:]).all(1)
         for box in self.taken:
             free &= ~((low < box[2:]).all(1) & (high > box[:2]).all(1))
-        spots, low, high = spots[free], low[free], high[free]
+        spots, low, high, costs = spots[free], low[free], high[free], np.asarray(costs, float)[free]
         if not len(spots):
             return None
         ink = np.vstack(self.ink) if self.ink else np.empty((0, 2))
         near = ink[((ink > low.min(0)) & (ink < high.max(0))).all(1)]
         covered = [np.count_nonzero(((near > a) & (near < b)).all(1)) for a, b in zip(low, high, strict=True)]
-        best = int(np.argmin(np.array(covered) * 4.0 + np.arange(len(spots)) * 24.0 / len(spots)))
+        best = int(np.argmin(np.array(covered) * 3.0 + costs))
         self.taken.append((*low[best], *high[best]))
         return tuple(spots[best])
 
@@ -196,9 +201,9 @@ class Paper:
         """Words beside one of the anchors (n, 2), with a thin leader; False where there is no room."""
         text = drawable(text)
         width, height = text_width(text, size, bold) + 1.4, size * POINT + 1.0
-        spots, starts = [], []
+        spots, starts, costs = [], [], []
         for gap in (1.2, 4.0, 8.0, 14.0, 22.0):
-            for x, y in anchors:
+            for order, (x, y) in enumerate(anchors):
                 for dx, dy in (
                     (1, 0),
                     (-1, 0),
@@ -212,7 +217,8 @@ class Paper:
                     aside = (gap + width / 2) * np.sign(dx) * (1 if dy == 0 else 0.8)
                     spots.append((x + aside, y + (gap + height / 2) * np.sign(dy)))
                     starts.append((x, y))
-        spot = self.place(spots, width, height, frame)
+                    costs.append(gap + 0.4 * order)
+        spot = self.place(spots, width, height, frame, costs)
         if spot is None:
             return False
         start = starts[spots.index(spot)]

@@ -18,6 +18,7 @@ from exposure.outputs.drawing_map import (
     Row,
     draw_axes,
     fitted,
+    fitting_key,
     line_symbol,
     north_arrow,
     scale_bar,
@@ -40,7 +41,8 @@ from exposure.outputs.drawing_words import (
 )
 from exposure.outputs.formats import digits
 
-
+MANY = 4  # traces of sections: more are drawn by their ends alone
+LOWEST = 70.0  # mm, height of the map
 LOW = 2.0  # m: up to here the zone where people stand says it all
 APART = 0.5  # m: of heights nearer than this the larger zone is drawn
 
@@ -72,9 +74,11 @@ def plan(assessment: Assessment, limits: str, population: str, own: tuple[Bounda
         f"{assessment.site.name}. Line: exposure ratio 1 by {clauses(assessment, limits, population)}; "
         f"averaging time {averaging(assessment, limits, population)}."
     )
-    key = _key(assessment, limits, population, lines, traces)
-    above, under = title_height(title, state), key.height + BAR + BELOW
-    tallest = max(70.0, min(MAP_HEIGHT - BELOW, TALLEST - above - under))
+    above = title_height(title, state)
+    room = TALLEST - above - LOWEST - BAR - BELOW
+    key = fitting_key(lambda *most: _key(assessment, limits, population, lines, traces, *most), room)
+    under = key.height + BAR + BELOW
+    tallest = max(LOWEST, min(MAP_HEIGHT - BELOW, TALLEST - above - under))
     window = fitted(_extent(assessment, lines), tallest, min(75.0, tallest), under)
     paper = Paper(WIDTH, under + window.size[1] + above)
     write_title(paper, title, state)
@@ -142,8 +146,7 @@ def _draw(paper, window, assessment, population, lines, traces):
         marks.draw_polygons(paper, window, boundary, **marks.height_looks(style), layer=1.5)
     chains = [(c.role, window.mm([p[:2] for p in c.points_m])) for c in assessment.conductors]
     marks.draw_conductors(paper, chains)
-    for trace in traces:
-        _draw_trace(paper, window, *trace)
+    _draw_traces(paper, window, traces)
     for number, area in enumerate(assessment.areas, 1):
         marks.number_area(paper, window, number, window.mm(area.corners_m))
     for boundary in ([lines.standing] if lines.standing else []) + [*lines.drawn]:
@@ -156,26 +159,36 @@ def _draw(paper, window, assessment, population, lines, traces):
         paper.label([*((corners + np.roll(corners, -1, 0)) / 2), *corners], "property line", window.frame)
 
 
-def _draw_trace(paper, window, letter, origin, bearing):
-    """Thick ends with letters at the edges of the window, a thin line between."""
+def _draw_traces(paper, window, traces):
+    """Thick ends with letters at the edges of the window; thin lines between, unless they are many."""
+    ends = []
+    for letter, origin, bearing in traces:
+        line = _trace(window, origin, bearing)
+        if line is None:
+            continue
+        if len(traces) <= MANY:
+            paper.line(line, 0.5, marks.TRACE, GREY, layer=2.2, avoided=False)
+        for end, other, mark in ((line[0], line[-1], letter), (line[-1], line[0], f"{letter}′")):
+            inward = (other - end) / np.hypot(*(other - end))
+            paper.line([end, end + 4 * inward], 1.8, layer=6)
+            ends.append((end, inward, mark))
+    for end, inward, mark in ends:
+        aside = np.array([inward[1], -inward[0]])
+        spots = [end + side * aside * 2.8 + along * inward for along in (2, 0, 4, -2, 7) for side in (1, -1)]
+        spot = paper.place(spots, 5.0, 3.6, window.frame, np.arange(len(spots)) * 0.5)
+        if spot:
+            paper.write(spot[0], spot[1] - 0.95, mark, 8, bold=True, align="center")
+
+
+def _trace(window, origin, bearing):
+    """The part of a plane's trace inside the window. [mm]"""
     way = np.array([sin(radians(bearing)), cos(radians(bearing))])
     west, south, east, north = window.bounds
     inset = 5.0 * window.scale / 1000
     far = (east - west) + (north - south)
     line = shapely.LineString([np.subtract(origin, far * way), np.add(origin, far * way)])
     cut = line.intersection(shapely.box(west + inset, south + inset, east - inset, north - inset))
-    if cut.is_empty or cut.length == 0:
-        return
-    ends = window.mm(cut.coords)
-    paper.line(ends, 0.5, marks.TRACE, GREY, layer=2.2, avoided=False)
-    for end, other, mark in ((ends[0], ends[-1], letter), (ends[-1], ends[0], f"{letter}′")):
-        inward = (other - end) / np.hypot(*(other - end))
-        paper.line([end, end + 4 * inward], 1.8, layer=6)
-        aside = np.array([inward[1], -inward[0]])
-        spots = [end + side * aside * 2.8 + along * inward for along in (2, 0, 4, 7) for side in (1, -1)]
-        spot = paper.place(spots, 5.0, 3.6, window.frame)
-        if spot:
-            paper.write(spot[0], spot[1] - 0.95, mark, 8, bold=True, align="center")
+    return None if cut.is_empty or cut.length == 0 else window.mm(cut.coords)
 
 
 def _owners(assessment, window):
@@ -186,7 +199,7 @@ def _owners(assessment, window):
     return owners
 
 
-def _key(assessment, limits, population, lines, traces):
+def _key(assessment, limits, population, lines, traces, most_areas, most_powers):
     rows = [Row(None, text, bold=True) for text in doubts(assessment, limits, population)]
     if not lines.known:
         rows.append(
@@ -196,7 +209,7 @@ def _key(assessment, limits, population, lines, traces):
         rows.append(Row(None, f"The boundary at {STANDING} is not known.", bold=True))
     elif lines.standing.polygons:
         symbol = zone_symbol(**marks.zone_looks(population))
-        rows.append(Row(symbol, f"limit reached or exceeded at 0–2 m up, where people stand"))
+        rows.append(Row(symbol, "limit reached or exceeded at 0–2 m up, where people stand"))
     else:
         rows.append(Row(None, f"Limit reached nowhere at {STANDING}, where people stand.", bold=True))
     for boundary, style in zip(lines.drawn, marks.HEIGHT_STYLES, strict=False):
@@ -213,8 +226,10 @@ def _key(assessment, limits, population, lines, traces):
         names = ", ".join(f"{letter}–{letter}′" for letter, *_ in traces)
         rows.append(Row(line_symbol(0.5, marks.TRACE, GREY), f"planes of the vertical sections {names}"))
     everything = range(1, len(assessment.areas) + 1)
-    areas = marks.area_rows(assessment, limits, population, everything)
-    return Key(tuple(rows), tuple(areas), tuple(marks.power_rows(assessment, limits, population)))
+    areas = marks.area_rows(assessment, limits, population, everything, most_areas)
+    return Key(
+        tuple(rows), tuple(areas), tuple(marks.power_rows(assessment, limits, population, most_powers))
+    )
 
 
 def _caption(assessment, limits, population, lines, scale) -> str:

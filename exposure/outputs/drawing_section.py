@@ -18,6 +18,7 @@ from exposure.outputs.drawing_map import (
     Row,
     draw_axes,
     fitted,
+    fitting_key,
     line_symbol,
     scale_bar,
     title_height,
@@ -38,6 +39,7 @@ from exposure.outputs.drawing_words import (
 from exposure.outputs.formats import digits
 
 BEHIND = 5.0  # m from the plane: areas nearer than this are dashed, conductors are drawn
+LOWEST = 55.0  # mm, height of the window where much else is written
 GROUND = 6.0  # mm of ground below the line
 COMPASS = ("north", "north-east", "east", "south-east", "south", "south-west", "west", "north-west")
 
@@ -92,9 +94,12 @@ def section(assessment: Assessment, boundary: Boundary, letter: str) -> Drawing:
         f"averaging time {averaging(assessment, limits, population)}."
     )
     chains, areas = _chains(assessment, plane), _areas(assessment, plane)
-    key = _key(assessment, boundary, {c.owner for c, _ in chains}, areas)
-    above, under = title_height(title, state), key.height + BAR + BELOW
-    tallest = max(55.0, min(MAP_HEIGHT - BELOW, TALLEST - above - under))
+    above = title_height(title, state)
+    owners = {c.owner for c, _ in chains}
+    room = TALLEST - above - LOWEST - BAR - BELOW
+    key = fitting_key(lambda *most: _key(assessment, boundary, owners, areas, *most), room)
+    under = key.height + BAR + BELOW
+    tallest = max(LOWEST, min(MAP_HEIGHT - BELOW, TALLEST - above - under))
     window = fitted(_extent(boundary, chains, areas), tallest, 45.0, under, GROUND)
     paper = Paper(WIDTH, under + window.size[1] + above)
     write_title(paper, title, state)
@@ -194,7 +199,7 @@ def _property_edges(assessment, plane, window):
     return [edge for cut in cuts for edge in cut if west < edge < east]
 
 
-def _key(assessment, boundary, owners, areas):
+def _key(assessment, boundary, owners, areas, most_areas, most_powers):
     limits, population = boundary.limits, boundary.population
     rows = [Row(None, text, bold=True) for text in doubts(assessment, limits, population)]
     if boundary.polygons:
@@ -209,8 +214,12 @@ def _key(assessment, boundary, owners, areas):
     if any(seen.behind for seen in areas):
         symbol = line_symbol(0.8, (0, (3, 2)), GREY)
         rows.append(Row(symbol, f"area not cut by the plane, at most {BEHIND:g} m beside it"))
-    shown = marks.area_rows(assessment, limits, population, {seen.number for seen in areas})
-    return Key(tuple(rows), tuple(shown), tuple(marks.power_rows(assessment, limits, population, most=4)))
+    shown = marks.area_rows(assessment, limits, population, {seen.number for seen in areas}, most_areas)
+    return Key(
+        tuple(rows),
+        tuple(shown),
+        tuple(marks.power_rows(assessment, limits, population, min(most_powers, 4))),
+    )
 
 
 def _caption(assessment, boundary, letter, right, scale) -> str:

@@ -26,7 +26,7 @@ def levels_of(assessment: Assessment, limits: str, population: str):
 def clauses(assessment: Assessment, limits: str, population: str) -> str:
     """The clauses of the levels, in printed order."""
     found = dict.fromkeys(x.clause for x in levels_of(assessment, limits, population))
-    return "; ".join(found) or "no clause known"
+    return "; ".join(found) or "a clause that is not known"
 
 
 def averaging(assessment: Assessment, limits: str, population: str) -> str:
@@ -39,7 +39,7 @@ def power_words(assessment: Assessment, limits: str, population: str, found: Tra
     """Frequency and powers of a transmission, at the averaging times of the limit."""
     times = {x.averaging_time_s for x in levels_of(assessment, limits, population)}
     means = [
-        f"{digits(x.power_w)} W mean over {minutes(x.averaging_time_s)}"
+        f"{digits(x.power_w)} W ({minutes(x.averaging_time_s)})"
         for x in found.average_powers
         if x.averaging_time_s in times and x.averaging_time_s > 0
     ]
@@ -47,7 +47,7 @@ def power_words(assessment: Assessment, limits: str, population: str, found: Tra
         f"{digits(found.frequency_hz / 1e6, 6)} MHz",
         f"transmitter {digits(found.peak_power_w)} W peak",
         f"antenna {digits(found.accepted_power_w)} W peak",
-        *means,
+        *(["mean " + ", ".join(means)] if means else []),
     ]
     if found.exclusive:
         parts.append("exclusive")
@@ -56,19 +56,26 @@ def power_words(assessment: Assessment, limits: str, population: str, found: Tra
 
 def doubts(assessment: Assessment, limits: str, population: str) -> list[str]:
     """Why the drawn line cannot be relied on: failed checks, boundaries not seen to end."""
-    found = [
-        f"The numerical solution of '{t.name}' did not pass its checks: do not rely on the line."
+    failed = [t.name for t in assessment.transmissions if not t.quality.passed]
+    endless = [
+        t.name
         for t in assessment.transmissions
-        if not t.quality.passed
+        for r in t.results
+        if (r.limits, r.population) == (limits, population) and None in (r.setback_m, r.compliance_distance_m)
     ]
-    for t in assessment.transmissions:
-        for result in t.results:
-            if (result.limits, result.population) == (limits, population) and None in (
-                result.setback_m,
-                result.compliance_distance_m,
-            ):
-                found.append(f"The zone of '{t.name}' was not seen to end: it may reach farther than drawn.")
+    found = []
+    if failed:
+        found.append(f"The solution of {_names(failed)} did not pass its checks: do not rely on the line.")
+    if endless:
+        found.append(
+            f"The zone of {_names(endless)} is not known to its end: it may reach farther than drawn."
+        )
     return found
+
+
+def _names(names) -> str:
+    more = f" and {len(names) - 2} more" if len(names) > 2 else ""
+    return " and ".join(f"'{name[:40]}'" for name in names[:2]) + more
 
 
 def geometry(boundary: Boundary | None):

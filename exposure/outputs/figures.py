@@ -40,7 +40,8 @@ def figures(assessment: Assessment) -> tuple[Drawing, ...]:
         )
         cuts = [b for b in own if b.section is not None and b.section_origin_m is not None]
         traces = [(letters[b.section], b.section_origin_m, b.section_bearing_deg) for b in cuts]
-        drawn.append(plan(assessment, limits, population, own, traces))
+        if own or assessment.areas or assessment.conductors or assessment.property:
+            drawn.append(plan(assessment, limits, population, own, traces))
         drawn += [section(assessment, b, letters[b.section]) for b in cuts]
     return (*drawn, *charts(assessment))
 
