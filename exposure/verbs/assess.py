@@ -12,14 +12,14 @@ from exposure.assessment.assess import assess
 from exposure.errors import ExposureError
 from exposure.outputs.figures import write_figures
 from exposure.outputs.report import write_report
-from exposure.outputs.result_file import write_geojson, write_result
+from exposure.outputs.result_file import read_result, write_geojson, write_result
 from exposure.site.site_file import read_site
 from exposure.verbs.screen import figures, print_json, print_table, progress
 
 EXIT_CODES = {"within limits": 0, "exceeds limits": 1, "cannot be decided": 3}
 CAUTION = (
-    "a calculation is no permission: local rules, the authority's current text and licensed or qualified persons "
-    "come first; never work near an antenna that can transmit"
+    "a calculation is no permission: local rules, the authority's current text and licensed or qualified "
+    "persons come first; never work near an antenna that can transmit"
 )
 FILES = ("assessment.json", "boundaries.geojson", "report.pdf", "figures")
 
@@ -62,7 +62,9 @@ def _fresh(directory: Path):
 
 
 def _write(assessment, directory: Path):
+    """All files; drawings and report come from the result file, as ``exposure report`` makes them again."""
     write_result(assessment, directory / "assessment.json")
+    assessment = read_result(directory / "assessment.json")
     if assessment.site.place_deg is not None:
         write_geojson(assessment, directory / "boundaries.geojson")
     write_figures(assessment, directory / "figures")
