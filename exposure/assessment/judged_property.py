@@ -9,7 +9,8 @@ from exposure.assessment.scene import GENERAL_PUBLIC, Scene
 from exposure.assessment.verdict import EXCEEDS, UNDECIDED, WITHIN
 from exposure.assessment.zones import STANDING, Zones
 
-LINE_ERROR = 0.01  # of the reach: a boundary is known to 2 % of the ratio, 1 % of distance (boundaries.KNOWN)
+LINE_ERROR = 0.01  # of the reach: a boundary is known to 2 % of the ratio, 1 % of distance (regions.KNOWN),
+LEAST_LINE_ERROR = 0.02  # m, where that is more (regions.KNOWN_DISTANCE)
 SMALLEST_ZONE = 1e-4  # m2
 
 
@@ -41,7 +42,7 @@ def judged_property(scene: Scene, rules: tuple[Rule, ...], zones: Zones, doubts)
 
 def line_error(zones: Zones) -> float:
     """How far a judged boundary may be from where it was drawn. [m]"""
-    return LINE_ERROR * zones.farthest
+    return max(LINE_ERROR * zones.farthest, LEAST_LINE_ERROR)
 
 
 def _margin(outline, zone, error: float) -> float | None:
