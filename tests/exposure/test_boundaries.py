@@ -7,6 +7,7 @@ from scipy.ndimage import label
 
 from exposure.assessment.boundaries import horizontal, section
 from exposure.assessment.contours import polygons, rings
+from exposure.assessment.distances import compliance_distances
 from tests.exposure.positions import GARDEN_WIRE, first_over, garden, heating, sphere, strengths
 
 CENTIMETRE = 0.01
@@ -136,6 +137,42 @@ def test_vertices_around_a_dipole_lie_on_the_line(height, budget):
             )
             assert errors.max() < CENTIMETRE
             assert shape(island).is_valid
+
+
+def test_a_boundary_decimetres_from_the_wire_lies_on_the_line():
+    """Weak field, reach 0.3 to 1.1 m: panels are known to 2 cm only, vertices still to 1 cm."""
+    weak = garden(current=0.5)
+    field = strengths(weak, [GARDEN_WIRE])
+    reach = [f.distance for f in compliance_distances(field, LIMITS)]
+
+    found = horizontal(field, LIMITS, 9.0, 9.0, reach)
+
+    assert 0.3 < min(reach) < max(reach) < 1.1
+    for ratio, islands in zip(LIMITS, found, strict=True):
+        (island,) = islands
+        errors = off_the_line(island, ratio, weak, lambda p: np.column_stack([p, np.full(len(p), 9.0)]))
+        assert errors.max() < CENTIMETRE
+
+
+def test_heights_between_the_first_five_are_seen():
+    """A hot wire 0.6 m above ground, a person's band of 0-2 m: E^2 = 0.3^2 / r^2 around it, radius 0.3 m.
+
+    The first set of heights has 0.29 and 1.0 m, both more than 0.3 m from a place 6 cm aside: only
+    more heights show the whole width.  Tolerance: 17 heights are 0.2 m apart or less there, half of that
+    off the wire's height the circle is sqrt(0.3^2 - 0.1^2) wide: 2 cm less, and 1 cm of the vertices.
+    """
+    wire = np.array([[-1.0, 0.0, 0.6], [1.0, 0.0, 0.6]])
+
+    def values(points):
+        beyond = np.maximum(np.abs(points[:, 0]) - 1.0, 0.0)
+        squared = beyond**2 + points[:, 1] ** 2 + (points[:, 2] - 0.6) ** 2
+        return 0.09 / np.maximum(squared, 1e-4)[:, None]
+
+    (found,) = horizontal(strengths(values, [wire]), [first_over(1.0)], 0.0, 2.0, [0.3])
+
+    zone = shapely.union_all([shape(p) for p in found])
+    assert zone.covers(shapely.LineString(wire[:, :2]).buffer(0.27))
+    assert shapely.LineString(wire[:, :2]).buffer(0.31).covers(zone)
 
 
 def test_a_conductor_is_inside_however_weak_its_field():
