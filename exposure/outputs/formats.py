@@ -2,7 +2,8 @@
 
 import math
 
-FOOT = 0.3048  # m, exactly
+from exposure.units import FOOT
+
 NOTHING = "–"
 
 

@@ -6,7 +6,7 @@ from reportlab.lib.colors import black
 from reportlab.platypus import CondPageBreak, KeepTogether, Paragraph, Preformatted, Spacer, Table
 
 from exposure.assessment.model import Assessment
-from exposure.outputs import tables, words
+from exposure.outputs import tables, tables_station, words
 from exposure.outputs.formats import metres
 from exposure.outputs.report_style import (
     BODY,
@@ -143,12 +143,12 @@ def distances(assessment: Assessment, width: float) -> list:
 
 def station(assessment: Assessment, width: float) -> list:
     """Transmissions, powers step by step, groups, antennas as solved."""
-    parts = [*paper_table(tables.transmissions(assessment), width)]
-    parts += _part("Exclusive groups", bullets(tables.exclusive(assessment)))
+    parts = [*paper_table(tables_station.transmissions(assessment), width)]
+    parts += _part("Exclusive groups", bullets(tables_station.exclusive(assessment)))
     for finding in assessment.transmissions:
-        parts += _part(f"Power of {finding.name}", paper_table(tables.power_steps(finding), width))
-    parts += _part("Antennas at their feeds", paper_table(tables.antennas(assessment), width))
-    parts += _part("Conductors as solved", paper_table(tables.conductors(assessment), width))
+        parts += _part(f"Power of {finding.name}", paper_table(tables_station.power_steps(finding), width))
+    parts += _part("Antennas at their feeds", paper_table(tables_station.antennas(assessment), width))
+    parts += _part("Conductors as solved", paper_table(tables_station.conductors(assessment), width))
     parts += _part("Left out of the solution", bullets(assessment.left_out))
     site = assessment.site
     place = (

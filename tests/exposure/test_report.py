@@ -305,7 +305,9 @@ def test_there_is_no_raster_image_in_the_file():
 
 def test_a_figure_is_drawn_at_its_size_with_caption_scale_and_words():
     reader = report(drawn=[picture()])
-    page = next(page for page in reader.pages if "Figure 1. Where the limit is reached." in page.extract_text())
+    page = next(
+        page for page in reader.pages if "Figure 1. Where the limit is reached." in page.extract_text()
+    )
     form = next(v.get_object() for k, v in page["/Resources"]["/XObject"].items() if "figure" in k)
 
     assert "Figure 1. Where the limit is reached. Scale 1:200 at full size." in " ".join(
