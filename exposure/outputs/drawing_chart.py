@@ -94,7 +94,8 @@ def _chart(assessment, groups, sheet: int, sheets: int, span) -> Drawing:
         y -= group.height
     caption = (
         "Exposure ratio of each area for each limit set and its population, all transmissions together, on a "
-        "log axis with the limit at 1; the thin mark is the value with its numerical error added. Not to scale."
+        "log axis with the limit at 1. The thin mark is the value with its numerical error added. "
+        "Not to scale."
     )
     name = "areas" if sheet == 1 else f"areas-{sheet}"
     return Drawing(name, title, caption, _alt(groups), WIDTH, paper.height, None, paper.figure)

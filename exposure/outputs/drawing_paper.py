@@ -180,7 +180,8 @@ class Paper:
     def place(self, spots, width, height, frame, costs):
         """The centre where a box of that size covers nothing and costs least; None if nowhere.
 
-        spots : (n, 2) mm; costs : (n,), to which the ink that is covered is added; frame : (left, bottom, right, top) to stay in.
+        spots : (n, 2) mm; costs : (n,), to which the ink that is covered is added;
+        frame : (left, bottom, right, top) to stay in.
         """
         spots = np.asarray(spots, float).reshape(-1, 2)
         low, high = spots - (width / 2, height / 2), spots + (width / 2, height / 2)

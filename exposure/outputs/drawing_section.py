@@ -228,7 +228,8 @@ def _caption(assessment, boundary, letter, right, scale) -> str:
     return (
         f"Vertical section {letter}–{letter}′ ({boundary.section}), seen with {right} to the right, with the "
         f"line where the exposure ratio of all transmissions together is 1; its trace is marked in the plan. "
-        f"Conductors within {BEHIND:g} m are projected onto the plane; the numerical error is not added to the line. "
+        f"Conductors within {BEHIND:g} m are projected onto the plane; the numerical error is not added to "
+        "the line. "
         f"Limit: {limit_words(assessment, limits, population)}, {clauses(assessment, limits, population)}; "
         f"averaging time {averaging(assessment, limits, population)}. Transmissions: {powers or 'none'}. "
         f"Scale 1:{scale}, heights and lengths alike."
