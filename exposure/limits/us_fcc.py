@@ -1,8 +1,8 @@
 """United States: maximum permissible exposure of the Federal Communications Commission."""
 
-from exposure.errors import OutOfScopeError
-from exposure.limits.tables import Row, Table
+from exposure.limits.tables import Band, Row, Table, levels_of
 from exposure.limits.types import Level, Summation
+from exposure.limits.use import ANY_ONE, E_AND_H, ONLY_S, RulesOfUse, ZoneRow
 
 TITLE = "FCC limits for maximum permissible exposure (MPE)"
 EDITION = "47 CFR 1.1310(e)(1), as amended 2020"
@@ -14,6 +14,20 @@ BRIEF_LOCAL_ABOVE = float("inf")  # Hz: no limit of brief local exposure
 SUMMATION = Summation(
     electric_and_magnetic_add=(),
     clause="OET Bulletin 65, section 2: quotients of S, or of the squares of E and of H apart (from memory)",
+)
+_NEAR = "OET Bulletin 65, section 2 (from memory, confidence 0.85)"
+USE = RulesOfUse(
+    cautions=(
+        "S below 300 MHz is the equivalent of a plane wave, E^2/377 ohm or 377 ohm H^2, not a power flow",
+        "not for portable devices (within 20 cm of the body); specific absorption limits apply to them",
+        "occupational limits only for persons who know of the exposure and can control it",
+        "general population: only a duty that lies in the emission itself may be credited (from memory)",
+        "no limit of limb or contact current, no ceiling of pulses",
+    ),
+    zones=(
+        ZoneRow(Band(0.3, 300.0), E_AND_H, E_AND_H, ANY_ONE, _NEAR),
+        ZoneRow(Band(300.0, 100_000.0, without_low=True), ONLY_S, ONLY_S, ONLY_S, _NEAR),
+    ),
 )
 
 # S in mW/cm2 as printed; f in MHz.  Edges are not assigned by the text: the lower value counts.
@@ -44,10 +58,5 @@ TABLES = {
 
 def reference_levels(population: str, frequency: float) -> tuple[Level, ...]:
     """The level of Table 1 at a frequency [Hz]."""
-    level = TABLES[population].level(frequency)
-    if level is None:
-        raise OutOfScopeError(
-            f"us_fcc has levels from 0.3 MHz to 100 GHz, not at {frequency / 1e6:g} MHz: below 0.3 MHz only "
-            "specific absorption rates apply"
-        )
-    return (level,)
+    remark = "below 0.3 MHz only specific absorption rates apply"
+    return levels_of("us_fcc", (TABLES[population],), frequency, remark)

@@ -133,7 +133,7 @@ def test_outside_the_tables_it_refuses(megahertz):
 
 
 def test_an_unknown_document_or_population_is_refused_by_name():
-    with pytest.raises(OutOfScopeError, match="known are us_fcc, icnirp_2020"):
+    with pytest.raises(OutOfScopeError, match="known are us_fcc, icnirp_1998"):
         reference_levels("no_such", "general_public", 1e7)
     with pytest.raises(OutOfScopeError, match="general_public, occupational"):
         reference_levels("us_fcc", "visitors", 1e7)
