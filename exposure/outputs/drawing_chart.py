@@ -18,8 +18,7 @@ from exposure.outputs.drawing_paper import (
     shortened,
     wrapped,
 )
-from exposure.outputs.drawing_words import GENERAL_PUBLIC
-from exposure.outputs.formats import digits
+from exposure.outputs.drawing_words import GENERAL_PUBLIC, ratio_words
 from exposure.outputs.words import POPULATIONS
 
 NAMES, VALUES = 66.0, 42.0  # mm beside the bars
@@ -145,7 +144,7 @@ def _looks(population):
 
 
 def _value(result) -> str:
-    return f"{digits(result.exposure_ratio)}  {result.verdict}"
+    return f"{ratio_words(result.exposure_ratio)}  {result.verdict}"
 
 
 def _decade(decade: int) -> str:
@@ -159,9 +158,11 @@ def _bar(left, bottom, right, top):
 def _alt(groups) -> str:
     parts = []
     for group in groups:
-        values = [
-            f"{r.limits} {'not known' if r.exposure_ratio is None else digits(r.exposure_ratio)}, {r.verdict}"
-            for r in group.area.results
-        ]
-        parts.append(f"Area {group.number}, {group.area.name}: {', '.join(values) or 'no limit covers it'}.")
+        values = ", ".join(_spoken(result) for result in group.area.results) or "no limit covers it"
+        parts.append(f"Area {group.number}, {group.area.name}: {values}.")
     return "Exposure ratios. " + " ".join(parts)
+
+
+def _spoken(result) -> str:
+    ratio = "not known" if result.exposure_ratio is None else ratio_words(result.exposure_ratio)
+    return f"{result.limits} {ratio}, {result.verdict}"

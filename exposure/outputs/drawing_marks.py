@@ -46,7 +46,7 @@ def draw_polygons(paper: Paper, window: Window, boundary, **looks):
 def draw_area(paper: Paper, ring, behind: bool = False):
     """A place where people are: light fill and thin outline; one corner alone is a diamond. [mm]"""
     if len(ring) < 3:
-        paper.dot(*np.mean(ring, axis=0), 4.0, "D", INK)
+        paper.dot(*np.mean(ring, axis=0), 4.0, "D", GREY if behind else INK)
         return
     paper.zone(
         [ring], "none" if behind else AREA_FILL, None, GREY, 0.8, (0, (3, 2)) if behind else "-", layer=1.0

@@ -38,6 +38,7 @@ from exposure.outputs.drawing_words import (
 )
 from exposure.outputs.formats import digits
 
+IN_PLANE = 0.5  # m: a point nearer than this lies in the plane
 BEHIND = 5.0  # m from the plane: areas nearer than this are dashed, conductors are drawn
 LOWEST = 55.0  # mm, height of the window where much else is written
 GROUND = 6.0  # mm of ground below the line
@@ -134,6 +135,7 @@ def _areas(assessment: Assessment, plane: Plane):
             off, along = plane.off(area.corners_m), plane.along(area.corners_m)
             near = 0.0 if off.min() <= 0 <= off.max() else abs(off).min()
             cuts = [(along.min(), along.max())] if near <= BEHIND else []
+            behind = shape.area > 0 or near > IN_PLANE
         low, high = area.bottom_m, area.top_m
         for left, right in cuts:
             ring = [(left, low), (right, low), (right, high), (left, high)]
@@ -213,7 +215,7 @@ def _key(assessment, boundary, owners, areas, most_areas, most_powers):
         rows.append(Row(line_symbol(1.1, marks.PROPERTY, INK), "property line, where the plane crosses it"))
     if any(seen.behind for seen in areas):
         symbol = line_symbol(0.8, (0, (3, 2)), GREY)
-        rows.append(Row(symbol, f"area not cut by the plane, at most {BEHIND:g} m beside it"))
+        rows.append(Row(symbol, f"area up to {BEHIND:g} m beside the plane (a point: grey)"))
     shown = marks.area_rows(assessment, limits, population, {seen.number for seen in areas}, most_areas)
     return Key(
         tuple(rows),

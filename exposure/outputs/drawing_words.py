@@ -116,9 +116,14 @@ def area_words(assessment: Assessment, limits: str, population: str) -> list[tup
         elif result.exposure_ratio is None:
             words = f"exposure ratio not known, {result.verdict}"
         else:
-            words = f"{digits(result.exposure_ratio)}, {result.verdict}"
+            words = f"{ratio_words(result.exposure_ratio)}, {result.verdict}"
         rows.append((area.name, heights(area.bottom_m, area.top_m), words))
     return rows
+
+
+def ratio_words(ratio: float) -> str:
+    """An exposure ratio; with more digits beside 1, so that none is rounded onto the limit."""
+    return digits(ratio, 6 if 0.99 < ratio < 1.01 else 3)
 
 
 def area_sentence(rows) -> str:

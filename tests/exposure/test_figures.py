@@ -350,3 +350,21 @@ def test_words_of_the_pdf_can_be_searched_and_no_picture_is_in_it():
     words = page.extract_text()
     assert "limit at 0-2 m up" in words and "1:200" in words
     assert not page.images
+
+
+def test_a_ratio_beside_the_limit_is_not_rounded_onto_it():
+    almost = station(areas=(_area("path", ((0.0, 0.0),), 0.9996),))
+    words = " ".join(texts(drawing(almost, "plan-us_fcc-general_public")))
+    assert "0.9996, within limits" in words
+    assert "0.9996" in drawing(almost, "areas").alt
+
+
+def test_areas_beside_a_section_are_dashed_and_those_cut_are_not():
+    """The plane runs east through the origin: the house (2 to 6 m north) is beside it, 12 m is too far."""
+    beside = drawing(station(), "section-a-us_fcc-general_public")
+    assert any("beside the plane" in text for text in texts(beside))
+    square = ((8.0, -2.0), (12.0, -2.0), (12.0, 2.0), (8.0, 2.0))
+    cut = station(areas=(_area("terrace", square, 0.1), _area("far", ((0.0, 12.0),), 0.1)))
+    section = drawing(cut, "section-a-us_fcc-general_public")
+    assert not any("beside the plane" in text for text in texts(section))
+    assert "1" in texts(section) and "2" not in texts(section)
