@@ -48,9 +48,9 @@ def draw_area(paper: Paper, ring, behind: bool = False):
     if len(ring) < 3:
         paper.dot(*np.mean(ring, axis=0), 4.0, "D", GREY if behind else INK)
         return
-    paper.zone(
-        [ring], "none" if behind else AREA_FILL, None, GREY, 0.8, (0, (3, 2)) if behind else "-", layer=1.0
-    )
+    if not behind:
+        paper.zone([ring], AREA_FILL, width=0, layer=1.0)
+    paper.zone([ring], colour=GREY, style=(0, (3, 2)) if behind else "-", layer=1.7)  # seen through zones
 
 
 def number_area(paper: Paper, window: Window, number: int, ring):
