@@ -5,7 +5,7 @@ from dataclasses import replace
 from exposure.assessment.ratios import Rule
 from exposure.assessment.sums import of_levels
 from exposure.errors import OutOfScopeError
-from exposure.limits import document, reference_levels
+from exposure.limits import ceilings, document, not_limited, reference_levels, stimulation_sum_levels
 from exposure.limits.types import Level
 
 
@@ -22,10 +22,13 @@ def rule(limits_id: str, population: str, emissions, unsolved=()) -> Rule:
     levels, missing = {}, [f"{name}: {reason}" for name, reason in unsolved]
     for emission in emissions:
         try:
-            found = _judged_levels(limits_id, population, emission.frequency)
+            found = _judged_levels(limits_id, population, emission.frequency, len(emissions) > 1)
         except OutOfScopeError as error:
             missing.append(f"{emission.name}: {error}")
             continue
+        left_to_others = not_limited(limits_id, emission.frequency)
+        if left_to_others is not None:
+            missing.append(f"{emission.name}: {left_to_others}")
         levels[emission.name] = tuple(level for level in found if _usable(level))
         missing += [
             f"{emission.name}: {limits_id} has no level to compare with for {level.effect}, {level.scope} "
@@ -43,13 +46,18 @@ def brief_local_above(limits_id: str) -> float:
     return getattr(document(limits_id), "BRIEF_LOCAL_ABOVE", float("inf"))
 
 
-def _judged_levels(limits_id: str, population: str, frequency: float) -> tuple[Level, ...]:
-    """The levels as they are compared: a local one without time average where brief exposures are limited."""
+def _judged_levels(limits_id: str, population: str, frequency: float, several: bool) -> tuple[Level, ...]:
+    """The levels as they are compared, with what a document's rules of pulses and of linear sums add.
+
+    A local level is taken without time average where brief exposures are limited.
+    """
     brief = frequency > brief_local_above(limits_id)
-    return tuple(
+    printed = tuple(
         replace(level, averaging_time_s=0.0) if brief and level.scope == "local" else level
         for level in reference_levels(limits_id, population, frequency)
     )
+    summed = stimulation_sum_levels(limits_id, population, frequency) if several else ()
+    return (*printed, *ceilings(limits_id, population, frequency), *summed)
 
 
 def averaging_times(limits_id: str, population: str, frequency: float) -> tuple[float, ...]:

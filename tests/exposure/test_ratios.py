@@ -257,3 +257,33 @@ def test_above_400_mhz_a_burst_counts_with_its_peak_against_the_local_level(freq
 
     (local,) = (test for test in found.tests if test.scope == "local")
     assert local.terms[0].power == power
+
+
+def test_a_short_loud_burst_meets_the_ceiling_of_a_rule_of_pulses():
+    """ICNIRP 1998, 0.475 MHz: 1 % duty halves the averaged ratio, but 615 V/m at the peak is over the ceiling.
+
+    Ceiling: level 87 V/m times 10^(0.665 log10(f/0.1 MHz) + log10 1.5) (shared facts, limits 3) over sqrt 2
+    for the rms of a carrier at its peak.
+    """
+    burst = emission(power=Power(peak=1.0, mean=0.01), frequency=0.475e6)
+    found = rule("icnirp_1998", "general_public", (burst,)).ratio(np.array([[615.0**2, 1e-12]]))
+
+    assert found[0] > 5
+
+
+def test_two_transmissions_add_linearly_where_a_document_sums_nerve_stimulation():
+    """ICNIRP 1998 to 10 MHz: sum of E/87 at peak envelope power; 2 x 60 V/m are over it, each alone is not."""
+    pair = [
+        emission("one", column=0, power=Power(1.0, 0.2), frequency=1.85e6),
+        emission("two", column=2, power=Power(1.0, 0.2), frequency=3.65e6),
+    ]
+    values = np.array([[3600.0, 1e-12, 3600.0, 1e-12]])
+
+    assert rule("icnirp_1998", "general_public", tuple(pair)).ratio(values)[0] > 1
+    assert rule("icnirp_1998", "general_public", (pair[0],)).ratio(values)[0] < 1
+
+
+def test_a_set_that_limits_only_stimulation_decides_nothing_alone():
+    found = rule("icnirp_2010", "general_public", (emission(frequency=3.6e6),))
+
+    assert any("another set has to judge it" in reason for reason in found.missing)
