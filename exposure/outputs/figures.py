@@ -16,7 +16,7 @@ from exposure.outputs.drawing_section import section
 from exposure.outputs.drawing_words import GENERAL_PUBLIC
 from exposure.outputs.whole_files import write_whole
 
-__all__ = ["Drawing", "figures", "pdf_bytes", "png_bytes", "svg_bytes", "write_figures"]
+__all__ = ["Drawing", "figures", "pdf_bytes", "png_bytes", "svg_bytes", "write_drawings", "write_figures"]
 
 SETTINGS = {
     "svg.fonttype": "none",  # text stays text
@@ -47,7 +47,12 @@ def figures(assessment: Assessment) -> tuple[Drawing, ...]:
 
 
 def write_figures(assessment: Assessment, directory) -> list[Path]:
-    """Write <name>.svg and <name>.png into a directory, which is made; returns the paths.
+    """Draw and write as ``write_drawings``; returns the paths."""
+    return write_drawings(figures(assessment), directory)
+
+
+def write_drawings(drawings, directory) -> list[Path]:
+    """Write <name>.svg of all, and <name>.png of plans, into a directory, which is made; returns the paths.
 
     Raises
     ------
@@ -57,8 +62,9 @@ def write_figures(assessment: Assessment, directory) -> list[Path]:
     directory = Path(directory)
     directory.mkdir(parents=True, exist_ok=True)
     paths = []
-    for drawing in figures(assessment):
-        for ending, content in ((".svg", svg_bytes), (".png", png_bytes)):
+    for drawing in drawings:
+        wanted = [(".svg", svg_bytes)] + [(".png", png_bytes)] * drawing.name.startswith("plan")
+        for ending, content in wanted:
             path = directory / f"{drawing.name}{ending}"
             write_whole(path, content(drawing))
             paths.append(path)

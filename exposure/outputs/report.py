@@ -18,22 +18,25 @@ WARNINGS = "Warnings about this site"
 ROOM_FOR_A_SECTION = 90  # points that must be left on a page to begin one
 
 
-def write_report(assessment: Assessment, path):
+def write_report(assessment: Assessment, path, drawings=None):
     """Write the PDF, whole or not at all; the same bytes for the same assessment.
+
+    drawings : those of ``figures.figures`` where they are made already.
 
     Raises
     ------
     ExposureError
         The place cannot be written to.
     """
-    write_whole(path, report_pdf(assessment, pictures(assessment)))
+    drawn = figures.figures(assessment) if drawings is None else drawings
+    write_whole(path, report_pdf(assessment, pictures(drawn)))
 
 
-def pictures(assessment: Assessment) -> tuple[Picture, ...]:
+def pictures(drawings) -> tuple[Picture, ...]:
     """Plans and sections, as vectors."""
     return tuple(
         Picture(d.name, d.title, d.caption, d.alt, d.width_mm, d.height_mm, d.scale, figures.pdf_bytes(d))
-        for d in figures.figures(assessment)
+        for d in drawings
     )
 
 

@@ -10,11 +10,12 @@ from pathlib import Path
 from exposure.antennas.trial import ModelError
 from exposure.assessment.assess import assess
 from exposure.errors import ExposureError
-from exposure.outputs.figures import write_figures
+from exposure.outputs.figures import figures, write_drawings
 from exposure.outputs.report import write_report
 from exposure.outputs.result_file import read_result, write_geojson, write_result
 from exposure.site.site_file import read_site
-from exposure.verbs.screen import figures, print_json, print_table, progress
+from exposure.verbs.screen import figures as digits
+from exposure.verbs.screen import print_json, print_table, progress
 
 EXIT_CODES = {"within limits": 0, "exceeds limits": 1, "cannot be decided": 3}
 CAUTION = (
@@ -67,8 +68,9 @@ def _write(assessment, directory: Path):
     assessment = read_result(directory / "assessment.json")
     if assessment.site.place_deg is not None:
         write_geojson(assessment, directory / "boundaries.geojson")
-    write_figures(assessment, directory / "figures")
-    write_report(assessment, directory / "report.pdf")
+    drawings = figures(assessment)
+    write_drawings(drawings, directory / "figures")
+    write_report(assessment, directory / "report.pdf", drawings)
 
 
 def _move(new: Path, old: Path):
@@ -86,7 +88,7 @@ def _print(assessment, directory: Path):
     for words in (*assessment.reasons, *assessment.conditions):
         print(f"  {words}")
     rows = [
-        (area.name, result.limits, figures(result.exposure_ratio), _cause(result), result.verdict)
+        (area.name, result.limits, digits(result.exposure_ratio), _cause(result), result.verdict)
         for area in assessment.areas
         for result in area.results
     ]

@@ -5,7 +5,7 @@ from dataclasses import asdict
 
 from exposure.errors import ExposureError, OutOfScopeError
 from exposure.keys.values import unknown_word
-from exposure.limits import DOCUMENTS, document, reference_levels
+from exposure.limits import DOCUMENTS, ceilings, document, reference_levels, stimulation_sum_levels
 from exposure.verbs.screen import figures, print_json, print_table
 
 OUTSIDE = 3
@@ -46,6 +46,23 @@ def _print(arguments, title: str, found):
     for population, levels in found.items():
         print(f"\n{population}")
         print_table(heads, [_row(level) for level in levels])
+        for title, more in _besides(arguments, population):
+            print(title)
+            print_table(heads, [_row(level) for level in more])
+    module = document(arguments.id)
+    print(f"\nsums of several transmissions: {module.SUMMATION.clause}")
+    for caution in module.USE.cautions:
+        print(f"caution: {caution}")
+
+
+def _besides(arguments, population: str):
+    """What a document's rules of pulses and of sums add to its levels, with a title each."""
+    place = arguments.id, population, arguments.frequency * 1e6
+    both = (
+        ("besides, at peak envelope power:", ceilings(*place)),
+        ("besides, where two or more transmissions are summed linearly:", stimulation_sum_levels(*place)),
+    )
+    return [(title, levels) for title, levels in both if levels]
 
 
 def _row(level) -> tuple[str, ...]:

@@ -114,9 +114,8 @@ def main():
         reference = factorisation(2000)
         for frequency in (1.9e6, 3.6e6, 14.2e6, 28.5e6):
             table = half_space_table(frequency)
-            print(
-                f"half-space table at {frequency / 1e6:g} MHz / zsytrf(2000): {table / reference:.2f} ({table:.2f} s)"
-            )
+            share = table / reference
+            print(f"half-space table at {frequency / 1e6:g} MHz / zsytrf(2000): {share:.2f} ({table:.2f} s)")
     imports, whole = assessment()
     print(f"garden dipole / imports: {whole / imports:.2f}   ({whole:.1f} s / {imports:.1f} s)")
 

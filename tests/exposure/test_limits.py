@@ -17,7 +17,6 @@ from exposure.limits import (
     stimulation_sum_levels,
     usable_quantities,
 )
-from exposure.limits.describe import as_dicts, describe
 from exposure.limits.use import zone
 
 GENERAL, WORKER = "general_public", "occupational"
@@ -447,43 +446,10 @@ def test_icnirp_2010_alone_says_nothing_about_heating_above_100_khz():
     assert [limits for limits in DOCUMENTS if not_limited(limits, 7e6)] == ["icnirp_2010"]
 
 
-# --- words
-
-
-@pytest.mark.parametrize("limits", DOCUMENTS)
-def test_a_description_has_every_clause_every_population_and_the_cautions(limits):
-    text = describe(limits, 7.1e6)
-
-    for population in document(limits).POPULATIONS:
-        assert population in text
-        for level in reference_levels(limits, population, 7.1e6):
-            assert level.clause in text
-    assert document(limits).SUMMATION.clause in text
-    assert document(limits).USE.cautions[0] in text
-
-
-def test_a_description_marks_what_was_not_verified():
-    assert "(not verified)" in describe("ieee_c95_1_2019", 440e6)
-    assert "(not verified)" not in describe("us_fcc", 440e6)
-
-
-def test_levels_as_dictionaries_carry_units_in_their_keys():
-    found = as_dicts("us_fcc", 50e6)
-
-    assert [entry["population"] for entry in found] == [GENERAL, WORKER]
-    assert found[0]["electric_v_per_m"] == 27.5 and found[0]["power_density_w_per_m2"] == 2
-    assert found[0]["averaging_time_s"] == 1800
-
-
-def test_outside_a_document_a_description_refuses_by_name():
-    with pytest.raises(OutOfScopeError, match="icnirp_2010"):
-        describe("icnirp_2010", 28e6)
-
-
 def test_limits_start_without_numerical_packages():
     """The verb `limits` has to start fast: nothing of numpy, scipy, matplotlib or reportlab is imported."""
     code = (
-        "import sys, exposure.limits.describe; "
+        "import sys, exposure.verbs.limits; "
         "print([m for m in ('numpy', 'scipy', 'matplotlib', 'reportlab') if m in sys.modules])"
     )
 

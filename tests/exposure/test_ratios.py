@@ -260,7 +260,7 @@ def test_above_400_mhz_a_burst_counts_with_its_peak_against_the_local_level(freq
 
 
 def test_a_short_loud_burst_meets_the_ceiling_of_a_rule_of_pulses():
-    """ICNIRP 1998, 0.475 MHz: 1 % duty halves the averaged ratio, but 615 V/m at the peak is over the ceiling.
+    """ICNIRP 1998, 0.475 MHz: at 1 % duty the averaged ratio is 0.5, but 615 V/m is over the ceiling.
 
     Ceiling: level 87 V/m times 10^(0.665 log10(f/0.1 MHz) + log10 1.5) (shared facts, limits 3) over sqrt 2
     for the rms of a carrier at its peak.
@@ -272,7 +272,7 @@ def test_a_short_loud_burst_meets_the_ceiling_of_a_rule_of_pulses():
 
 
 def test_two_transmissions_add_linearly_where_a_document_sums_nerve_stimulation():
-    """ICNIRP 1998 to 10 MHz: sum of E/87 at peak envelope power; 2 x 60 V/m are over it, each alone is not."""
+    """ICNIRP 1998 to 10 MHz: sum of E/87 at peak envelope power; 2 x 60 V/m are over it, one is not."""
     pair = [
         emission("one", column=0, power=Power(1.0, 0.2), frequency=1.85e6),
         emission("two", column=2, power=Power(1.0, 0.2), frequency=3.65e6),
