@@ -19,6 +19,7 @@ from exposure.assessment.strengths import FieldStrengths
 MARGIN = 1.05  # on the compliance distance, for its own tolerance
 NEAR = 0.01  # m; vertices are moved until this near to the line, or NEAR_RELATIVE of the reach
 NEAR_RELATIVE = 1e-3
+MOVES = 4  # of a vertex towards the line
 CONDUCTOR = 0.06  # m, least width drawn
 FARTHEST = 1000.0  # m, where a boundary that has no end is cut off
 
@@ -72,7 +73,11 @@ def _polygons(regions: Regions, i, reach, field):
 
 
 def _onto(regions: Regions, i, field, ring, near):
-    """A ring in raster steps, thinned, then moved onto the line by the true fields, (k, 2)."""
+    """A ring in raster steps, thinned, then moved onto the line by the true fields, (k, 2).
+
+    Beside panels that were not asked the raster's slope may point the wrong way: of all places that a
+    vertex has had, the one nearest to the line counts.
+    """
     plane, step = regions.plane, regions.step
     places = plane.lower + ring * step
     if len(places) < 3:
@@ -84,9 +89,12 @@ def _onto(regions: Regions, i, field, ring, near):
     places = np.clip(places, plane.lower, plane.upper)
     slope = _slope(regions, field, places)
     size = np.maximum(np.linalg.norm(slope, axis=1), 1e-6)
+    best, miss = places.copy(), np.full(len(places), np.inf)
     active = np.arange(len(places))
-    for _ in range(4):
+    for _ in range(MOVES + 1):
         ratio = np.log(np.clip(regions.true_ratio(i, places[active]), 0.5, 2.0))
+        nearer = np.abs(ratio) < miss[active]
+        best[active[nearer]], miss[active[nearer]] = places[active[nearer]], np.abs(ratio[nearer])
         move = ratio / size[active]
         far = np.abs(move) > 0.5 * near
         if not far.any():
@@ -94,7 +102,7 @@ def _onto(regions: Regions, i, field, ring, near):
         active, move = active[far], np.clip(move[far], -2 * step.max(), 2 * step.max())
         moved = places[active] - (move / size[active])[:, None] * slope[active]
         places[active] = np.clip(moved, plane.lower, plane.upper)
-    return places
+    return best
 
 
 def _slope(regions: Regions, field, places):

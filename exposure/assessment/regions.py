@@ -21,6 +21,7 @@ KNOWN_DISTANCE = 0.02  # m, where that is more; vertices of a boundary are moved
 SURELY = 1.2  # ratio at every node of a panel that a conductor crosses
 CELLS_IN_SMALLEST_PANEL = 4
 HALF_THE_LAYERS = 0.1  # of the ratio: then all of them are good to about its square
+ROUGH = 0.1  # of a logarithm: beside a null, on an axis of symmetry, no polynomial fits; true fields then
 ENOUGH = 1e6  # ratio, stands for inf
 MOST_CELLS = 200_000
 
@@ -165,7 +166,7 @@ class Regions:
         """The raster of all panels; finer heights may overwrite it."""
         first = np.rint((panels.lower - self.plane.lower) / self.step).astype(int)
         cells = np.rint(panels.sides / self.step).astype(int)
-        hidden = blind(panels, self._distance) | np.isinf(panels.errors).any(axis=1)
+        hidden = blind(panels, self._distance) | (panels.errors > ROUGH).any(axis=1)
         for size in np.unique(cells, axis=0):
             chosen = np.flatnonzero((cells == size).all(axis=1))
             logs = panels[chosen].grid(size + 1)

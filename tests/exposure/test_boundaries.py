@@ -208,3 +208,26 @@ def test_rings_pass_every_edge_once():
     inside = sum(shapely.Polygon(r).area * (1 if shapely.LinearRing(r).is_ccw else -1) for r in found)
     assert all(shapely.LinearRing(r).is_simple for r in found)
     assert 0.4 * 900 < inside < 0.6 * 900
+
+
+def test_a_magnetic_null_on_an_axis_makes_no_tower():
+    """E^2 = 25/r^2 and H^2 = 25 (rho/r)^2/(eta r)^2 around (0, 0, 9): the section is the circle of 5 m.
+
+    On the axis the logarithm of H^2 has no bottom, so no polynomial follows it; true fields must.
+    Whatever either quotient is, none exceeds that of E: 5 m with the 2 cm of a section.
+    """
+
+    def values(points):
+        offset = points - [0.0, 0.0, 9.0]
+        squared = np.maximum((offset**2).sum(axis=1), 1e-8)
+        across = offset[:, 0] ** 2 + offset[:, 1] ** 2
+        return np.column_stack([25 / squared, 25 * across / squared**2 / 376.73**2])
+
+    def ratio(found):
+        return np.maximum(found[:, 0], found[:, 1] * 376.73**2)
+
+    (found,) = section(strengths(values, WIRE, 10.0), [ratio], (0.0, 0.0), 0.0, 8.0, 16.0, [5.0])
+
+    (island,) = found
+    radii = np.hypot(*(np.array(island.outline) - [0.0, 9.0]).T)
+    assert radii == pytest.approx(5.0, abs=2 * CENTIMETRE)
