@@ -18,6 +18,8 @@ from exposure import __version__
 from exposure.errors import ExposureError
 
 BAD_INPUT, INTERNAL_FAULT, INTERRUPTED = 2, 70, 130
+# matrices are small and products many: a second linear-algebra thread mostly waits, and costs as much again
+ONE_THREAD = ("OPENBLAS_NUM_THREADS", "MKL_NUM_THREADS", "VECLIB_MAXIMUM_THREADS", "OMP_NUM_THREADS")
 SHOW_FAULTS = "EXPOSURE_TRACEBACK"  # environment variable: internal faults show where they arose
 
 
@@ -32,6 +34,8 @@ class Verb:
 
 def main(argv=None) -> int:
     """Run the command; the exit code comes back."""
+    for name in ONE_THREAD:
+        os.environ.setdefault(name, "1")
     arguments = _parser().parse_args(argv)
     try:
         return importlib.import_module(VERBS[arguments.verb].module).run(arguments)

@@ -21,7 +21,6 @@ KNOWN_DISTANCE = 0.02  # m, where that is more; vertices of a boundary are moved
 SURELY = 1.2  # ratio at every node of a panel that a conductor crosses
 CELLS_IN_SMALLEST_PANEL = 4
 HALF_THE_LAYERS = 0.1  # of the ratio: then all of them are good to about its square
-ROUGH = 0.1  # of a logarithm: beside a null, on an axis of symmetry, no polynomial fits; true fields then
 ENOUGH = 1e6  # ratio, stands for inf
 MOST_CELLS = 200_000
 
@@ -138,19 +137,24 @@ class Regions:
         if not len(panels):
             return np.zeros(0, int)
         hidden = blind(panels, self._distance)
-        errors = np.where(hidden[:, None], np.inf, panels.errors)[:, None, None, :]
-        seen = panels.grid((LOOKS, LOOKS))
-        needed = np.zeros(len(panels), bool)
-        for i in range(len(self.ratios)):
-            least, most = layered.ratio(i, seen, errors, -1), layered.ratio(i, seen, errors)
-            open_ = (least < 1) & (most > 1) & (most > least * (1 + 2 * self.known[i]))
-            needed |= open_.any(axis=(1, 2)) & ~(hidden & layered.surely(i, panels))
+        needed = self._open(layered, panels, hidden)
         across = np.where(
             hidden, np.argmax(panels.sides, axis=1), np.argmax(panels.tails.max(axis=2), axis=1)
         )
         small = panels.sides <= CELLS_IN_SMALLEST_PANEL * self.step * (1 + 1e-9)
         across = np.where(small[np.arange(len(panels)), across], 1 - across, across)
         return np.where(needed & ~small.all(axis=1), across, -1)
+
+    def _open(self, layered, panels, hidden):
+        """Panels in which it is not known well enough where some ratio is one, (n,) bool."""
+        errors = np.where(hidden[:, None], np.inf, panels.errors)[:, None, None, :]
+        seen = panels.grid((LOOKS, LOOKS))
+        result = np.zeros(len(panels), bool)
+        for i in range(len(self.ratios)):
+            least, most = layered.ratio(i, seen, errors, -1), layered.ratio(i, seen, errors)
+            open_ = (least < 1) & (most > 1) & (most > least * (1 + 2 * self.known[i]))
+            result |= open_.any(axis=(1, 2)) & ~(hidden & layered.surely(i, panels))
+        return result
 
     def _may_exceed(self, layered, panels):
         """Panels in which some ratio may be one or more, (n,) bool."""
@@ -163,10 +167,14 @@ class Regions:
         return np.max(most, axis=0) > 1
 
     def _fill(self, fields, layered, panels):
-        """The raster of all panels; finer heights may overwrite it."""
+        """The raster of all panels; finer heights may overwrite it.
+
+        True fields where no polynomial fits: beside conductors, and beside nulls on an axis of symmetry.
+        """
         first = np.rint((panels.lower - self.plane.lower) / self.step).astype(int)
         cells = np.rint(panels.sides / self.step).astype(int)
-        hidden = blind(panels, self._distance) | (panels.errors > ROUGH).any(axis=1)
+        hidden = blind(panels, self._distance)
+        hidden |= self._open(layered, panels, hidden)
         for size in np.unique(cells, axis=0):
             chosen = np.flatnonzero((cells == size).all(axis=1))
             logs = panels[chosen].grid(size + 1)
