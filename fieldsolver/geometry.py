@@ -26,11 +26,13 @@ class Wire:
         Infinite for a perfect conductor. [S/m]
     relative_permeability : float
         [1]
+    coating : None
+        Bare wire; insulation is not modelled.
 
     Raises
     ------
     GeometryError
-        Numbers that are not finite, no length, a radius that is not positive, or a wire shorter
+        A coating, numbers that are not finite, no length, a radius that is not positive, or a wire shorter
         than two radii (D. R. Wilton and N. J. Champagne, IEEE Trans. AP-54 (2006) 1200, from memory: the
         integrals hold for segments of two radii; shorter ones are not thin wires).
     """
@@ -40,8 +42,11 @@ class Wire:
     radius: float
     conductivity: float = math.inf
     relative_permeability: float = 1.0
+    coating: None = None
 
     def __post_init__(self):
+        if self.coating is not None:
+            raise GeometryError("an insulated wire: coatings are not modelled, leave coating at None")
         object.__setattr__(self, "start", _vector(self.start, "start"))
         object.__setattr__(self, "end", _vector(self.end, "end"))
         if not (self.radius > 0 and math.isfinite(self.radius)):

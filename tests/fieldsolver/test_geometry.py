@@ -29,6 +29,11 @@ def test_a_wire_that_is_not_thin_or_not_a_wire_is_refused(start, end, radius, wo
         fs.Wire(start, end, radius)
 
 
+def test_an_insulated_wire_is_refused_by_name():
+    with pytest.raises(fs.GeometryError, match="coatings are not modelled"):
+        fs.Wire((0, 0, 0), (0, 0, 1), 1e-3, coating=object())
+
+
 @pytest.mark.parametrize(
     "arguments, words",
     [
