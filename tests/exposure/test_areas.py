@@ -3,6 +3,8 @@
 import numpy as np
 import pytest
 import shapely
+from scipy.integrate import trapezoid
+from shapely.affinity import rotate
 
 from exposure.assessment.areas import (
     OUTLINE_STEPS,
@@ -168,7 +170,7 @@ def test_the_mean_over_a_body_beneath_a_dipole():
     def mean(plan):
         heights = np.linspace(0, 2, 201)
         points = np.column_stack([np.tile(plan, (201, 1)), heights])
-        return np.trapezoid(garden(current=2.0)(points), heights, axis=0) / 2
+        return trapezoid(garden(current=2.0)(points), heights, axis=0) / 2
 
     for extreme, ratio in zip(found, LIMITS, strict=True):
         assert ratio(mean(extreme.position[:2])[None])[0] == pytest.approx(extreme.ratio, rel=1e-4)
@@ -188,7 +190,7 @@ def test_a_path_is_widened_and_a_point_stays():
 
 
 def test_the_frame_of_a_turned_rectangle_is_itself():
-    turned = shapely.affinity.rotate(shapely.box(0, 0, 7, 3), 33)
+    turned = rotate(shapely.box(0, 0, 7, 3), 33)
 
     _, axes, sides = frame(turned)
 
