@@ -166,9 +166,11 @@ def _geometry(polygon: Polygon):
 
 
 def heights_of(scene: Scene, worst) -> tuple[float, ...]:
-    """Heights of planes: those of the worst places of areas, and of antennas; none twice."""
+    """Heights of planes: areas' worst places, their floors and tops above 2 m, antennas; none twice."""
     used = {t.antenna for part in scene.parts for t in part.transmissions}
-    wanted = [*worst, *(a.height for a in scene.site.antennas if a.name in used and a.height > NO_HIGHER)]
+    edges = [h for area in scene.site.areas for h in (area.bottom, area.top) if h > STANDING[1]]
+    antennas = [a.height for a in scene.site.antennas if a.name in used and a.height > NO_HIGHER]
+    wanted = [*worst, *edges, *antennas]
     found = []
     for height in sorted(float(h) for h in wanted):
         if not found or height - found[-1] > SAME_HEIGHT:
