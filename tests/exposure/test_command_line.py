@@ -245,7 +245,16 @@ def test_an_interrupt_ends_with_code_130_and_a_word(tmp_path):
     pipe = tmp_path / "pipe.toml"
     os.mkfifo(pipe)
     command = [sys.executable, "-m", "exposure", "check", str(pipe)]
-    job = subprocess.Popen(command, cwd=ROOT, stdout=subprocess.PIPE, stderr=subprocess.PIPE, text=True)
+    job = subprocess.Popen(
+        command,
+        cwd=ROOT,
+        stdout=subprocess.PIPE,
+        stderr=subprocess.PIPE,
+        text=True,
+        preexec_fn=lambda: signal.signal(
+            signal.SIGINT, signal.SIG_DFL
+        ),  # a shell's background jobs ignore it
+    )
 
     writer = opened_once_read(pipe, job)
     _interrupted(job)
